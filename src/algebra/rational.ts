@@ -1,0 +1,98 @@
+/**
+ * Exact rationals at the edge of the library: users see `Fraction`, everything inside counts in integers over one common
+ * denominator. `Fraction` is only ever built from integers here; given a float it would search for a nearby fraction.
+ */
+import Fraction from 'fraction.js';
+import { InputError, show } from '../errors.ts';
+
+export { Fraction };
+
+/** Greatest common divisor, never negative; `gcd(0, 0) = 0`. */
+export function gcd(a: bigint, b: bigint): bigint {
+  let x = a < 0n ? -a : a;
+  let y = b < 0n ? -b : b;
+  while (y !== 0n) [x, y] = [y, x % y];
+  return x;
+}
+
+/** Least common multiple of positive integers. */
+export function lcm(a: bigint, b: bigint): bigint {
+  return (a / gcd(a, b)) * b;
+}
+
+/** An exact rational: integers, lowest terms, positive denominator. The serialised form everywhere is `p/q` or `p`. */
+export interface Rational {
+  readonly numerator: bigint;
+  readonly denominator: bigint;
+}
+
+/** @throws InputError on a zero denominator */
+export function rational(numerator: bigint, denominator = 1n): Rational {
+  if (denominator === 0n) throw new InputError('rational', 'a denominator other than 0', '0');
+  const common = gcd(numerator, denominator);
+  const sign = denominator < 0n ? -1n : 1n;
+  return { numerator: (sign * numerator) / common, denominator: (sign * denominator) / common };
+}
+
+/** Longest text of a number that is read; keeps hostile input from becoming work. */
+export const MAX_NUMBER_LENGTH = 200;
+
+/**
+ * Reads an exact number: an integer, a decimal such as `0.35` or `.5`, or a fraction `p/q` of integers. No exponent, no
+ * sign other than a leading `+` or `-`.
+ *
+ * @throws InputError for anything else, a zero denominator, or more than `MAX_NUMBER_LENGTH` characters
+ */
+export function rationalFromText(text: string): Rational {
+  if (text.length > MAX_NUMBER_LENGTH)
+    throw new InputError('number', `at most ${MAX_NUMBER_LENGTH} characters`, show(text));
+  const match = /^([+-]?)(?:(\d+)(?:\/(\d+))?|(\d*)\.(\d+))$/.exec(text);
+  if (match === null)
+    throw new InputError('number', 'an integer, a decimal or a fraction p/q, exact', show(text));
+  const [, sign, integer, denominator, whole, decimals] = match;
+  const factor = sign === '-' ? -1n : 1n;
+  if (integer !== undefined) return rational(factor * BigInt(integer), BigInt(denominator ?? 1));
+  return rational(factor * BigInt(`${whole}${decimals}`), 10n ** BigInt(decimals!.length));
+}
+
+/** `p/q`, or `p` where the denominator is 1. */
+export function textFromRational({ numerator, denominator }: Rational): string {
+  return denominator === 1n ? `${numerator}` : `${numerator}/${denominator}`;
+}
+
+export function toFraction({ numerator, denominator }: Rational): Fraction {
+  return new Fraction(numerator, denominator);
+}
+
+/** Accepts what users hand over as a number: a `Fraction`, a `Rational`, exact text, a `bigint`, or a safe integer `number`. */
+export type Exact = Fraction | Rational | string | bigint | number;
+
+/** @throws InputError for floats that are not integers (write them as text), NaN, infinities and anything that is not a number */
+export function exact(value: Exact): Rational {
+  if (typeof value === 'string') return rationalFromText(value.trim());
+  if (typeof value === 'bigint') return rational(value);
+  if (typeof value === 'number') {
+    if (Number.isSafeInteger(value)) return rational(BigInt(value));
+    throw new InputError('number', 'an exact value; write a decimal or fraction as text', show(value));
+  }
+  if (value instanceof Fraction) return rational(BigInt(value.s) * BigInt(value.n), BigInt(value.d));
+  if (typeof value === 'object' && typeof value?.numerator === 'bigint' && typeof value.denominator === 'bigint')
+    return rational(value.numerator, value.denominator);
+  throw new InputError('number', 'a Fraction, exact text, a bigint or an integer', show(value));
+}
+
+export function add(a: Rational, b: Rational): Rational {
+  return rational(a.numerator * b.denominator + b.numerator * a.denominator, a.denominator * b.denominator);
+}
+
+export function multiply(a: Rational, b: Rational): Rational {
+  return rational(a.numerator * b.numerator, a.denominator * b.denominator);
+}
+
+/** @throws InputError on division by zero */
+export function divide(a: Rational, b: Rational): Rational {
+  return rational(a.numerator * b.denominator, a.denominator * b.numerator);
+}
+
+export const ZERO: Rational = { numerator: 0n, denominator: 1n };
+export const ONE: Rational = { numerator: 1n, denominator: 1n };

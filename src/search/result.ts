@@ -1,0 +1,31 @@
+/** What a search returns. Plain frozen values; `src/cli` and `src/report` print them. */
+import type { Operator } from '../algebra/operator.ts';
+import type { Rational } from '../algebra/rational.ts';
+import type { Hamiltonian } from '../model/hamiltonian.ts';
+
+/** One member of the canonical basis. */
+export interface Charge {
+  readonly range: number;
+  /** Under `hamiltonian.reflection`; null where the model has no such symmetry. */
+  readonly parity: 'even' | 'odd' | null;
+  /** Integer coefficients without a common factor, in representatives; the sum over translates commutes with H, exactly. */
+  readonly density: Operator;
+}
+
+/** All charges of range ≤ `range`: a basis, and the numbers that prove it complete. */
+export interface SearchResult {
+  readonly hamiltonian: Hamiltonian;
+  readonly range: number;
+  /** Entry j − 1: the dimension of the space of charges of range ≤ j. */
+  readonly dimensionByRange: readonly number[];
+  /** The canonical basis, sorted by range, parity, leading word. */
+  readonly charges: readonly Charge[];
+  /** H = Σ expansion[i] · charges[i]; null when H has a longer range than was searched. */
+  readonly expansionOfH: readonly Rational[] | null;
+  /** The statement holds on the infinite chain and on every ring of at least so many cells. */
+  readonly minimumCells: number;
+  /** The first one carries the upper bound; all of them together the coefficients. */
+  readonly primes: readonly number[];
+  readonly candidates: number;
+  readonly milliseconds: number;
+}
