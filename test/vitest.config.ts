@@ -1,6 +1,6 @@
 import { defineConfig } from 'vitest/config';
 
 export default defineConfig({
-  root: new URL("..", import.meta.url).pathname,
+  root: new URL('..', import.meta.url).pathname,
   test: { include: ['test/**/*.test.ts'], testTimeout: 60_000, hookTimeout: 60_000 },
 });

@@ -4,7 +4,16 @@
  * Integers over one positive common denominator, in lowest terms, so two equal operators have equal fields. Every Hermitian
  * operator is such a combination; the two Hermitian products below keep it so. All values are immutable.
  */
-import { type Exact, exact, type Fraction, gcd, lcm, type Rational, textFromRational, toFraction } from './rational.ts';
+import {
+  type Exact,
+  exact,
+  type Fraction,
+  gcd,
+  lcm,
+  type Rational,
+  textFromRational,
+  toFraction,
+} from './rational.ts';
 import { commute, compareWords, product, spanOf, textFromWord, type Word, wordFromText } from './word.ts';
 
 export class Operator {
@@ -169,7 +178,9 @@ export class Operator {
   }
 
   toJSON(): Record<string, string> {
-    return Object.fromEntries([...this.terms()].map(([word, c]) => [textFromWord(word), textFromRational(c)]));
+    return Object.fromEntries(
+      [...this.terms()].map(([word, c]) => [textFromWord(word), textFromRational(c)]),
+    );
   }
 }
 

@@ -76,7 +76,11 @@ export function exact(value: Exact): Rational {
     throw new InputError('number', 'an exact value; write a decimal or fraction as text', show(value));
   }
   if (value instanceof Fraction) return rational(BigInt(value.s) * BigInt(value.n), BigInt(value.d));
-  if (typeof value === 'object' && typeof value?.numerator === 'bigint' && typeof value.denominator === 'bigint')
+  if (
+    typeof value === 'object' &&
+    typeof value?.numerator === 'bigint' &&
+    typeof value.denominator === 'bigint'
+  )
     return rational(value.numerator, value.denominator);
   throw new InputError('number', 'a Fraction, exact text, a bigint or an integer', show(value));
 }

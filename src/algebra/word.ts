@@ -110,7 +110,8 @@ export function shift(word: Word, spins: number): Word {
 /** The string read backwards on spins 0 … length − 1. */
 export function reverse(word: Word, length: number): Word {
   let reversed = 0n;
-  for (let rest = word, spin = 0; spin < length; spin++, rest >>= 2n) reversed = (reversed << 2n) | (rest & 3n);
+  for (let rest = word, spin = 0; spin < length; spin++, rest >>= 2n)
+    reversed = (reversed << 2n) | (rest & 3n);
   return reversed;
 }
 

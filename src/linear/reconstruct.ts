@@ -14,7 +14,11 @@ export function chineseRemainder(a: bigint, m: bigint, b: bigint, p: bigint, mIn
  * The first remainder below the bound in the extended Euclidean algorithm; unique because 2·n·d < m.
  * Method: "Reconstruction of rational numbers", Proc. SYMSAC (1981), as common practice has it. Cost: quadratic in the digits.
  */
-export function rationalReconstruction(a: bigint, m: bigint, bound = reconstructionBound(m)): Rational | undefined {
+export function rationalReconstruction(
+  a: bigint,
+  m: bigint,
+  bound = reconstructionBound(m),
+): Rational | undefined {
   let [r0, r1] = [m, ((a % m) + m) % m];
   let [t0, t1] = [0n, 1n];
   while (r1 > bound) {

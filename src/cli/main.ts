@@ -1,0 +1,76 @@
+#!/usr/bin/env node
+/** The `holdfast` command: picks the subcommand, words errors, sets the exit status. */
+import { parseArgs } from 'node:util';
+import { HoldfastError, InputError } from '../errors.ts';
+import { type Command, type CommandInput, Exit } from './command.ts';
+import { search } from './commands/search.ts';
+
+const COMMANDS: readonly Command[] = [search];
+
+const USAGE = `holdfast finds all local conserved quantities of a spin chain up to a range, exactly, or proves that there are none.
+
+  holdfast COMMAND …            holdfast COMMAND --help            holdfast --version
+
+${COMMANDS.map((c) => `  ${c.name.padEnd(14)}${c.summary}`).join('\n')}
+
+Exit status: 0 complete answer, 1 failure or rejected, 2 bad input. Reasons go to stderr, answers to stdout.
+`;
+
+export async function main(argv: readonly string[]): Promise<number> {
+  const [name, ...rest] = argv;
+  if (name === undefined || name === '--help' || name === '-h' || name === 'help') {
+    process.stdout.write(USAGE);
+    return name === undefined ? Exit.input : Exit.done;
+  }
+  const command = COMMANDS.find((c) => c.name === name);
+  const cancel = new AbortController();
+  const interrupt = () => cancel.abort();
+  process.once('SIGINT', interrupt);
+  try {
+    if (command === undefined)
+      throw new InputError('holdfast', `a command: ${COMMANDS.map((c) => c.name).join(', ')}`, name);
+    return await command.run(inputOf(command, rest, cancel.signal));
+  } catch (error) {
+    if (error instanceof HelpWanted) {
+      process.stdout.write(`${command?.help ?? USAGE}\n`);
+      return Exit.done;
+    }
+    if (!(error instanceof HoldfastError)) throw error;
+    process.stderr.write(`${error.message}\n`);
+    return error instanceof InputError ? Exit.input : Exit.failed;
+  } finally {
+    process.removeListener('SIGINT', interrupt);
+  }
+}
+
+class HelpWanted extends Error {}
+
+function inputOf(command: Command, args: readonly string[], signal: AbortSignal): CommandInput {
+  let parsed: ReturnType<typeof parseArgs>;
+  try {
+    parsed = parseArgs({
+      args: [...args],
+      options: { ...command.options, help: { type: 'boolean', short: 'h' } },
+      allowPositionals: true,
+      strict: true,
+    });
+  } catch (error) {
+    throw new InputError(
+      command.name,
+      `options as in \`holdfast ${command.name} --help\``,
+      (error as Error).message,
+    );
+  }
+  if (parsed.values['help'] === true) throw new HelpWanted();
+  return {
+    values: parsed.values as CommandInput['values'],
+    positionals: parsed.positionals,
+    out: (text) => void process.stdout.write(text),
+    note: (text) => void process.stderr.write(text),
+    interactive: process.stderr.isTTY === true,
+    colour: process.stdout.isTTY === true && !process.env['NO_COLOR'],
+    signal,
+  };
+}
+
+process.exitCode = await main(process.argv.slice(2));
