@@ -49,7 +49,7 @@ const EXCERPT = 60;
 
 function pointAt({ text, offset }: { text: string; offset: number }): string {
   const start = Math.max(0, offset - EXCERPT / 2);
-  const excerpt = text.slice(start, start + EXCERPT).replace(/\s/g, ' ');
+  const excerpt = text.slice(start, start + EXCERPT).replace(/[\s\p{Cc}]/gu, ' ');
   const head = start > 0 ? '…' : '';
   return ` at position ${offset + 1}\n  ${head}${excerpt}\n  ${' '.repeat(head.length + offset - start)}^`;
 }

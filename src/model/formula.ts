@@ -4,26 +4,27 @@
  *
  * Text → syntax tree → combination of Pauli strings with polynomials in the free parameters as coefficients → exact values.
  */
-import { Operator } from '../algebra/operator.ts';
+import type { Operator } from '../algebra/operator.ts';
 import { Polynomial } from '../algebra/polynomial.ts';
-import { divide, type Exact, exact, ONE, type Rational } from '../algebra/rational.ts';
+import { divide, type Exact, exact, MAX_NUMBER_LENGTH, ONE, type Rational } from '../algebra/rational.ts';
 import { compareWords, product, spanOf, textFromWord, type Word } from '../algebra/word.ts';
 import { InputError, show } from '../errors.ts';
 import { Chain } from '../lattice/chain.ts';
 import { type Hamiltonian, hamiltonianOf } from './hamiltonian.ts';
+import {
+  isReadable,
+  isWithinBits,
+  MAX_COEFFICIENT_BITS,
+  MAX_DEGREE,
+  MAX_NAME_LENGTH,
+  MAX_PARAMETERS,
+  MAX_TERMS,
+  MAX_WORD_LENGTH,
+  MAX_WORK,
+  operatorOf,
+} from './limits.ts';
 import { type Node, parseSyntax, type Site, type Syntax } from './syntax.ts';
-import { isParameterName, MAX_NAME_LENGTH, MAX_WORD_LENGTH, refuse } from './tokens.ts';
-
-/** Most Pauli strings in a density, also in between. */
-export const MAX_TERMS = 20_000;
-/** Most products of coefficients that reading one formula may take. */
-const MAX_WORK = 2_000_000;
-/** Longest numerator or denominator of a coefficient, in bits. */
-const COEFFICIENT_BOUND = 1n << 4096n;
-/** Most free parameters of a family. */
-export const MAX_PARAMETERS = 64;
-/** Highest power of one parameter in a family. */
-const MAX_DEGREE = 256;
+import { isParameterName, refuse } from './tokens.ts';
 
 export interface FormulaOptions {
   /** Spins a cell, 1 by default; translations move by one cell. */
@@ -110,7 +111,10 @@ export function familyAt(family: Family, point: readonly Exact[]): Hamiltonian {
   const values = point.map(exact);
   return hamiltonianOf(
     family.chain,
-    Operator.fromTerms(family.terms.map(([word, p]) => [word, p.evaluate(values)] as const)),
+    operatorOf(
+      'family',
+      family.terms.map(([word, p]) => [word, p.evaluate(values)] as const),
+    ),
   );
 }
 
@@ -119,7 +123,8 @@ function densityOf(formula: string, chain: Chain, parameters: Parameters | undef
   const values = valuesOf(syntax, parameters);
   for (const [name, at] of syntax.names)
     if (!values.has(name)) refuse(formula, at, 'a value for every parameter', unbound(name));
-  return Operator.fromTerms(
+  return operatorOf(
+    'formula',
     [...evaluate(syntax, chain, values, [])].map(([word, p]) => [word, p.asConstant()!] as const),
   );
 }
@@ -196,10 +201,8 @@ function evaluate(
     if (terms.size > MAX_TERMS) refuse(text, at, `at most ${MAX_TERMS} Pauli strings`, `${terms.size}`);
     for (const { re, im } of terms.values())
       for (const p of [re, im]) {
-        let size = p.denominator;
-        for (const value of p.numerators.values())
-          if (value > size || -value > size) size = value < 0n ? -value : value;
-        if (size > COEFFICIENT_BOUND) refuse(text, at, 'coefficients of at most 4096 bits', 'a longer one');
+        if (!(isWithinBits(p.denominator) && [...p.numerators.values()].every(isWithinBits)))
+          refuse(text, at, `coefficients of at most ${MAX_COEFFICIENT_BITS} bits`, 'a longer one');
         if (p.degrees(free.length).some((d) => d > MAX_DEGREE))
           refuse(text, at, `powers of a parameter up to ${MAX_DEGREE}`, 'a higher one');
       }
@@ -321,6 +324,9 @@ function evaluate(
       );
     if (spanOf(word) > MAX_WORD_LENGTH)
       refuse(text, 0, `words of at most ${MAX_WORD_LENGTH} letters`, `${spanOf(word)}`);
+    for (const monomial of re.numerators.keys())
+      if (!isReadable(re.coefficient(monomial)))
+        refuse(text, 0, `coefficients of at most ${MAX_NUMBER_LENGTH} characters`, 'a longer one');
     result.set(word, re);
   }
   return result;

@@ -11,12 +11,8 @@
 import type { Rational } from '../algebra/rational.ts';
 import type { Word } from '../algebra/word.ts';
 import { show } from '../errors.ts';
+import { MAX_NESTING, MAX_POWER } from './limits.ts';
 import { refuse, type Token, tokenise } from './tokens.ts';
-
-/** Deepest nesting of parentheses. */
-export const MAX_NESTING = 100;
-/** Highest power of a scalar. */
-export const MAX_POWER = 64;
 
 export type Site = Extract<Token, { kind: 'site' }>;
 

@@ -2,13 +2,8 @@
 import { MAX_NUMBER_LENGTH, type Rational, rationalFromText } from '../algebra/rational.ts';
 import { LETTERS, type Word, wordFromText } from '../algebra/word.ts';
 import { InputError, show } from '../errors.ts';
+import { MAX_FORMULA_LENGTH, MAX_NAME_LENGTH, MAX_WORD_LENGTH } from './limits.ts';
 
-/** Longest formula in characters. */
-export const MAX_FORMULA_LENGTH = 200_000;
-/** Longest Pauli word, in letters. */
-export const MAX_WORD_LENGTH = 256;
-/** Longest name of a parameter. */
-export const MAX_NAME_LENGTH = 64;
 /** Largest site number. */
 const MAX_SITE = 1_000_000;
 /** Most numbers in one subscript. */
