@@ -1,0 +1,44 @@
+/** Every public name, layer by layer. What is not here may change without notice. */
+
+export { Operator } from './algebra/operator.ts';
+export { Polynomial } from './algebra/polynomial.ts';
+export {
+  type Exact,
+  Fraction,
+  type Rational,
+  rationalFromText,
+  textFromRational,
+} from './algebra/rational.ts';
+export {
+  commute,
+  compareWords,
+  letterAt,
+  type Phase,
+  product,
+  textFromWord,
+  type Word,
+  weightOf,
+  wordFromText,
+} from './algebra/word.ts';
+export { CancelledError, HoldfastError, InputError, LimitError, VerificationError } from './errors.ts';
+export { Chain, MAX_CELL, type Reflection } from './lattice/chain.ts';
+export {
+  type Family,
+  type FormulaOptions,
+  familyAt,
+  type Parameters,
+  parseDensity,
+  parseFamily,
+  parseModel,
+} from './model/formula.ts';
+export { type Hamiltonian, hamiltonianOf } from './model/hamiltonian.ts';
+export {
+  familyFromDocument,
+  jsonFromModel,
+  type ModelDocument,
+  modelFromDocument,
+  modelFromJson,
+  modelJsonSchema,
+  readModelDocument,
+} from './model/schema.ts';
+export type { Charge, SearchResult } from './search/result.ts';
