@@ -75,14 +75,17 @@ export function exact(value: Exact): Rational {
     if (Number.isSafeInteger(value)) return rational(BigInt(value));
     throw new InputError('number', 'an exact value; write a decimal or fraction as text', show(value));
   }
-  if (value instanceof Fraction) return rational(BigInt(value.s) * BigInt(value.n), BigInt(value.d));
-  if (
-    typeof value === 'object' &&
-    typeof value?.numerator === 'bigint' &&
-    typeof value.denominator === 'bigint'
-  )
-    return rational(value.numerator, value.denominator);
+  if (typeof value === 'object' && value !== null) {
+    // By shape, not by class: a caller's Fraction may come from another copy of the package, and its fields are writable.
+    const { s, n, d, numerator = product(s, n), denominator = d } = value as Partial<Fraction & Rational>;
+    if (typeof numerator === 'bigint' && typeof denominator === 'bigint')
+      return rational(numerator, denominator);
+  }
   throw new InputError('number', 'a Fraction, exact text, a bigint or an integer', show(value));
+}
+
+function product(a: unknown, b: unknown): bigint | undefined {
+  return typeof a === 'bigint' && typeof b === 'bigint' ? a * b : undefined;
 }
 
 export function add(a: Rational, b: Rational): Rational {
