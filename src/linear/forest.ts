@@ -85,8 +85,10 @@ export class WeightedForest {
     const wa = this.rootWeight;
     const rb = this.root(b);
     const wb = this.rootWeight;
-    if (ra === zero) return this.setZero(rb);
-    if (rb === zero) return this.setZero(ra);
+    if (ra === zero || rb === zero) {
+      this.setZero(ra === zero ? rb : ra);
+      return;
+    }
     const u = multiply(f, wa);
     const v = multiply(g, wb);
     if (ra === rb) {

@@ -49,12 +49,12 @@ export function assemble(
   for (let row = 0; row < rowOf.size; row++) start[row + 1]! += start[row]!;
   const next = start.slice();
   const columnOf = new Uint32Array(entries);
-  const valueOf = new Uint16Array(entries);
+  const entryOf = new Uint16Array(entries);
   for (let column = 0; column < strings.length; column++)
     for (let i = columnStart[column]!; i < columnStart[column + 1]!; i++) {
       const at = next[rows[i]!]!++;
       columnOf[at] = column;
-      valueOf[at] = value[i]!;
+      entryOf[at] = value[i]!;
     }
   return {
     strings,
@@ -63,7 +63,7 @@ export function assemble(
       rows: rowOf.size,
       start,
       column: columnOf,
-      value: valueOf,
+      value: entryOf,
       values: table.values,
     },
   };
