@@ -41,4 +41,9 @@ export {
   modelJsonSchema,
   readModelDocument,
 } from './model/schema.ts';
+export { CAUTIONS, printResult, type TextOptions } from './report/text.ts';
+export { type BackgroundOptions, search } from './search/background.ts';
+export { type Estimate, estimate } from './search/estimate.ts';
 export type { Charge, SearchResult } from './search/result.ts';
+export { candidateCount, leadingWord, type SearchOptions, searchNow } from './search/search.ts';
+export type { OnProgress, Progress } from './search/sweep.ts';

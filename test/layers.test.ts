@@ -37,7 +37,10 @@ const PACKAGES: Readonly<Record<string, readonly string[]>> = {
 };
 
 /** Files outside `cli/` that may use Node, with the reason. Everything else has to run in a browser. */
-const NODE_FILES: Readonly<Record<string, string>> = {};
+const NODE_FILES: Readonly<Record<string, string>> = {
+  'search/background.ts': 'starts the worker thread',
+  'search/worker.ts': 'runs in it',
+};
 
 interface Import {
   readonly target: string;

@@ -3,9 +3,10 @@
 import { parseArgs } from 'node:util';
 import { HoldfastError, InputError } from '../errors.ts';
 import { type Command, type CommandInput, Exit } from './command.ts';
+import { demo } from './commands/demo.ts';
 import { search } from './commands/search.ts';
 
-const COMMANDS: readonly Command[] = [search];
+const COMMANDS: readonly Command[] = [search, demo];
 
 const USAGE = `holdfast finds all local conserved quantities of a spin chain up to a range, exactly, or proves that there are none.
 

@@ -1,0 +1,87 @@
+/** The search in a thread of its own: the event loop of the host stays free, and an `AbortSignal` stops it at once. */
+import { createRequire } from 'node:module';
+import { freemem } from 'node:os';
+import { pathToFileURL } from 'node:url';
+import { Worker } from 'node:worker_threads';
+import { CancelledError, LimitError, VerificationError } from '../errors.ts';
+import type { Hamiltonian } from '../model/hamiltonian.ts';
+import { estimate } from './estimate.ts';
+import type { SearchResult } from './result.ts';
+import type { SearchOptions } from './search.ts';
+import { plainModel, resultOf } from './transfer.ts';
+import type { Answer, Task } from './worker.ts';
+
+export interface BackgroundOptions extends SearchOptions {
+  readonly signal?: AbortSignal;
+  /** Bytes the search may use; the default is what the machine has free. A larger value overrides the refusal. */
+  readonly memory?: number;
+}
+
+/**
+ * `searchNow` in a worker thread.
+ *
+ * @throws LimitError before it starts when the estimate exceeds `memory`; CancelledError on abort; else as `searchNow`
+ */
+export async function search(h: Hamiltonian, options: BackgroundOptions): Promise<SearchResult> {
+  const { range, signal, onProgress, memory = freeMemory(), primesBelow } = options;
+  const need = estimate(h, range);
+  if (need.bytes > memory)
+    throw new LimitError(
+      `search: range ${range} has ${need.candidates.toLocaleString('en')} candidates and needs about ${gigabytes(need.bytes)}; ` +
+        `${gigabytes(memory)} may be used. Give a larger memory limit to try all the same`,
+    );
+  if (signal?.aborted) throw new CancelledError('search');
+  const task: Task = { model: plainModel(h), range, ...(primesBelow === undefined ? {} : { primesBelow }) };
+  const worker = new Worker(...workerSource(task));
+  try {
+    return await new Promise<SearchResult>((resolve, reject) => {
+      signal?.addEventListener('abort', () => reject(new CancelledError('search')), { once: true });
+      worker.on('message', (answer: Answer) => {
+        if (answer.kind === 'progress') {
+          try {
+            onProgress?.(answer.progress);
+          } catch (error) {
+            reject(error);
+          }
+        } else if (answer.kind === 'result') resolve(resultOf(h, answer.result));
+        else reject(errorOf(answer.name, answer.message));
+      });
+      worker.on('error', reject);
+      worker.on('exit', (code) =>
+        reject(new VerificationError(`search: the worker ended with status ${code}`)),
+      );
+    });
+  } finally {
+    await worker.terminate();
+  }
+}
+
+/** An allocation that the machine refuses arrives as a RangeError. */
+function errorOf(name: string, message: string): Error {
+  if (name === 'LimitError' || name === 'RangeError') return new LimitError(message);
+  return new VerificationError(message);
+}
+
+function freeMemory(): number {
+  const { availableMemory } = process as { availableMemory?: () => number };
+  return availableMemory?.call(process) ?? freemem();
+}
+
+function gigabytes(bytes: number): string {
+  return `${(bytes / 1e9).toPrecision(2)} GB`;
+}
+
+/**
+ * The worker's file beside this one. From source its thread needs a TypeScript loader of its own, whatever the host uses: the
+ * loader of the development set-up is registered there first.
+ */
+function workerSource(task: Task): ConstructorParameters<typeof Worker> {
+  if (!import.meta.url.endsWith('.ts'))
+    return [new URL('./worker.js', import.meta.url), { workerData: task }];
+  const loader = createRequire(import.meta.url)
+    .resolve('tsx/esm/api')
+    .replace(/\.cjs$/, '.mjs');
+  const file = new URL('./worker.ts', import.meta.url).href;
+  const script = `import(${JSON.stringify(pathToFileURL(loader).href)}).then(({ tsImport }) => tsImport(${JSON.stringify(file)}, ${JSON.stringify(file)}));`;
+  return [script, { eval: true, workerData: task, execArgv: [] }];
+}

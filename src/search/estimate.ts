@@ -1,0 +1,39 @@
+/** What a search will need, before it starts. */
+import { InputError, LimitError, show } from '../errors.ts';
+import type { Hamiltonian } from '../model/hamiltonian.ts';
+import { MAX_SPINS } from './sweep.ts';
+
+export interface Estimate {
+  /** Columns of the system: representatives of range 1 … k, 4^{nk} − 4^{n(k−1)}. */
+  readonly candidates: number;
+  /** Bytes at the peak: two 32-bit words a packed string, one bit an output, and the runtime. */
+  readonly bytes: number;
+  /** Seconds to expect on one core of 2020s hardware; the model at hand may take a few times longer or less. */
+  readonly seconds: number;
+}
+
+/** Measured, docs/performance.md: runtime and code, and nanoseconds a candidate and term. */
+const BASE_BYTES = 90e6;
+const NANOSECONDS = 8;
+
+/**
+ * Candidates, memory and time of a search.
+ *
+ * @throws InputError when the range is no positive integer; LimitError when candidates do not fit the packed form
+ */
+export function estimate(h: Hamiltonian, range: number): Estimate {
+  if (!(Number.isInteger(range) && range >= 1))
+    throw new InputError('search', 'a range of one cell or more, a whole number', show(range));
+  const n = h.chain.cell;
+  const size = 4 ** (n * range);
+  const hitBits = n * (range + h.range - 2) <= 16 ? 4 ** (n * (range + Math.max(0, h.range - 2))) : 0;
+  if (n * range > MAX_SPINS)
+    throw new LimitError(
+      `search: range ${range} in cells of ${n} is ${n * range} spins, ${(size * (1 - 4 ** -n)).toPrecision(3)} candidates; the exhaustive search takes up to ${MAX_SPINS} spins`,
+    );
+  return {
+    candidates: size - 4 ** (n * (range - 1)),
+    bytes: Math.round(BASE_BYTES + 8 * size + hitBits / 8),
+    seconds: (size * NANOSECONDS * (h.density.size + 2)) / 1e9,
+  };
+}
