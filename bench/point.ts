@@ -1,0 +1,40 @@
+/** One point of a grid in a process of its own: `point.ts '{"formula": …, "cell": …, "range": …}'` prints one JSON line. */
+import { parseModel } from '../src/model/formula.ts';
+import { searchNow } from '../src/search/search.ts';
+import { peakMemory } from './measure.ts';
+
+export interface PointRequest {
+  readonly formula: string;
+  readonly cell: number;
+  readonly range: number;
+}
+
+export interface PointAnswer {
+  /** Wall time of the one call, nothing warmed up. */
+  readonly seconds: number;
+  /** Processor time of the same, all threads. */
+  readonly processorSeconds: number;
+  readonly dimension: number;
+  readonly candidates: number;
+  /** Peak of the whole process, and what the process had before the search began; bytes. */
+  readonly peak: number;
+  readonly before: number;
+}
+
+const request = JSON.parse(process.argv[2]!) as PointRequest;
+const hamiltonian = parseModel(request.formula, { cell: request.cell });
+const before = peakMemory();
+const processor = process.cpuUsage();
+const start = process.hrtime.bigint();
+const result = searchNow(hamiltonian, { range: request.range });
+const seconds = Number(process.hrtime.bigint() - start) / 1e9;
+const used = process.cpuUsage(processor);
+const answer: PointAnswer = {
+  seconds,
+  processorSeconds: (used.user + used.system) / 1e6,
+  dimension: result.charges.length,
+  candidates: result.candidates,
+  peak: peakMemory(),
+  before,
+};
+console.log(JSON.stringify(answer));

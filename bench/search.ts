@@ -1,0 +1,129 @@
+/** The search over a grid of ranges, each sample a fresh process, with the compiled pass beside it. */
+import { buildPass, runPass } from './limit/limit.ts';
+import { clockGrain, grainWarning, run, type Spread, spreadOf } from './measure.ts';
+import { type BenchModel, candidatesOf, hamiltonianOfBench, MODELS, nonZeros } from './models.ts';
+import type { BenchOptions } from './options.ts';
+import type { PointAnswer, PointRequest } from './point.ts';
+import { megabytes, ratio, seconds, type Table } from './table.ts';
+
+export interface Point extends Spread {
+  readonly answer: PointAnswer;
+}
+
+/** As many samples as asked for while they stay cheap; long points get fewer. */
+const BUDGET_SECONDS = 30;
+
+/**
+ * @throws Error when a run fails or its answer is not the known one: a wrong answer has no speed
+ */
+export async function measurePoint(model: BenchModel, range: number, samples: number): Promise<Point> {
+  const request: PointRequest = { formula: model.formula, cell: model.cell, range };
+  const times: number[] = [];
+  let answer: PointAnswer | undefined;
+  let spent = 0;
+  while (times.length < samples && (times.length < 1 || spent < BUDGET_SECONDS)) {
+    const { status, stdout, stderr } = await run(
+      process.execPath,
+      [
+        '--max-old-space-size=12000',
+        '--import',
+        'tsx',
+        new URL('point.ts', import.meta.url).pathname,
+        JSON.stringify(request),
+      ],
+      { seconds: 1800 },
+    );
+    if (status !== 0) throw new Error(`${model.name}, range ${range}: status ${status}\n${stderr}`);
+    const one = JSON.parse(stdout) as PointAnswer;
+    if (one.dimension !== model.dimension(range))
+      throw new Error(
+        `${model.name}, range ${range}: ${one.dimension} charges, ${model.dimension(range)} are known`,
+      );
+    if (answer === undefined || one.peak > answer.peak) answer = one;
+    times.push(one.seconds);
+    spent += one.seconds;
+  }
+  return { ...spreadOf(times), answer: answer! };
+}
+
+export async function benchSearch(options: BenchOptions): Promise<Table[]> {
+  const pass = await buildPass();
+  const grain = clockGrain();
+  const tables: Table[] = [];
+  for (const model of MODELS) {
+    if (options.models !== undefined && !options.models.includes(model.name)) continue;
+    const h = hamiltonianOfBench(model);
+    const rows: string[][] = [];
+    const notes = new Set<string>();
+    if ('missing' in pass) notes.add(pass.missing);
+    let previous: { readonly range: number; readonly median: number } | undefined;
+    for (const range of options.ranges ?? (options.smoke ? model.smoke : model.usual)) {
+      const point = await measurePoint(model, range, options.samples);
+      const entries = nonZeros(h, range);
+      let passSeconds = Number.NaN;
+      if ('program' in pass) {
+        const passes = [];
+        for (let i = 0; i < Math.min(3, options.samples); i++) {
+          const one = await runPass(pass.program, h, range);
+          if (one === undefined) throw new Error(`${model.name}, range ${range}: the compiled pass failed`);
+          if (one.nonzeros !== entries)
+            throw new Error(
+              `${model.name}, range ${range}: the compiled pass met ${one.nonzeros} non-zeros, not ${entries}`,
+            );
+          passes.push(one.seconds);
+        }
+        passSeconds = spreadOf(passes).median;
+      }
+      for (const time of [point.median, passSeconds]) {
+        const warning = grainWarning(time, grain);
+        if (warning !== undefined) notes.add(`Range ${range}: ${warning}.`);
+      }
+      const target = model.targets[range];
+      const peak = point.answer.peak;
+      const met =
+        target !== undefined &&
+        point.median <= target.seconds &&
+        (target.megabytes === undefined || peak <= target.megabytes * 1e6);
+      rows.push([
+        `${range}`,
+        `${candidatesOf(model.cell, range)}`,
+        `${point.answer.dimension}`,
+        `${seconds(point.median)} ± ${seconds(point.deviation)}`,
+        `${point.samples}`,
+        previous?.range === range - 1 ? ratio(point.median / previous.median) : '',
+        megabytes(peak),
+        ((point.median / entries) * 1e9).toPrecision(3),
+        Number.isNaN(passSeconds) ? '—' : seconds(passSeconds),
+        Number.isNaN(passSeconds) ? '—' : ratio(point.median / passSeconds),
+        target === undefined
+          ? ''
+          : `${met ? 'met' : 'missed'}: ${target.seconds} s${target.megabytes === undefined ? '' : `, ${target.megabytes} MB`}`,
+      ]);
+      previous = { range, median: point.median };
+      notes.add(
+        `Of the memory, ${megabytes(point.answer.before)} are Node's and the loader's before the search begins.`,
+      );
+      options.progress(`${model.name}: range ${range} in ${seconds(point.median)}`);
+    }
+    tables.push({
+      name: `search-${model.name}`,
+      title: `${model.title}: \`${model.formula}\``,
+      columns: [
+        'range',
+        'candidates',
+        'charges',
+        'time, median ± MAD',
+        'samples',
+        'growth',
+        'peak memory',
+        'ns a non-zero',
+        'compiled pass',
+        'search/pass',
+        'target',
+      ],
+      rows,
+      notes: [...notes].slice(0, 1 + notes.size),
+    });
+  }
+  return tables;
+}
