@@ -55,6 +55,7 @@ export async function benchSearch(options: BenchOptions): Promise<Table[]> {
     const h = hamiltonianOfBench(model);
     const rows: string[][] = [];
     const notes = new Set<string>();
+    const before: number[] = [];
     if ('missing' in pass) notes.add(pass.missing);
     let previous: { readonly range: number; readonly median: number } | undefined;
     for (const range of options.ranges ?? (options.smoke ? model.smoke : model.usual)) {
@@ -88,11 +89,11 @@ export async function benchSearch(options: BenchOptions): Promise<Table[]> {
         `${range}`,
         `${candidatesOf(model.cell, range)}`,
         `${point.answer.dimension}`,
-        `${seconds(point.median)} ± ${seconds(point.deviation)}`,
+        point.samples > 1 ? `${seconds(point.median)} ± ${seconds(point.deviation)}` : seconds(point.median),
         `${point.samples}`,
         previous?.range === range - 1 ? ratio(point.median / previous.median) : '',
         megabytes(peak),
-        ((point.median / entries) * 1e9).toPrecision(3),
+        ratio((point.median / entries) * 1e9),
         Number.isNaN(passSeconds) ? '—' : seconds(passSeconds),
         Number.isNaN(passSeconds) ? '—' : ratio(point.median / passSeconds),
         target === undefined
@@ -100,6 +101,7 @@ export async function benchSearch(options: BenchOptions): Promise<Table[]> {
           : `${met ? 'met' : 'missed'}: ${target.seconds} s${target.megabytes === undefined ? '' : `, ${target.megabytes} MB`}`,
       ]);
       previous = { range, median: point.median };
+      before.push(point.answer.before);
       notes.add(
         `Of the memory, ${megabytes(point.answer.before)} are Node's and the loader's before the search begins.`,
       );
@@ -122,7 +124,11 @@ export async function benchSearch(options: BenchOptions): Promise<Table[]> {
         'target',
       ],
       rows,
-      notes: [...notes].slice(0, 1 + notes.size),
+      notes: [
+        'A sample is one search in a fresh process, one thread, nothing warmed up; without the start of Node.',
+        `Peak memory is that of the whole process; Node and the loader have ${megabytes(spreadOf(before).median)} before the search begins.`,
+        ...notes,
+      ],
     });
   }
   return tables;
