@@ -81,9 +81,9 @@ function importsOf(source: string): Import[] {
     found.push({ target: target!, typeOnly: false });
   for (const [, target] of code.matchAll(/\bimport\s*\(\s*['"]([^'"]+)['"]/g))
     found.push({ target: target!, typeOnly: false });
-  // A worker's file is loaded through its URL.
+  // A worker's file is loaded through its URL, which the compiler does not rewrite.
   for (const [, target] of code.matchAll(/new URL\(\s*['"](\.[^'"]+)['"]\s*,\s*import\.meta\.url/g))
-    found.push({ target: target!, typeOnly: false });
+    found.push({ target: target!.replace(/\.js$/, '.ts'), typeOnly: false });
   return found;
 }
 
