@@ -195,18 +195,25 @@ function evaluate(
   const spend = (steps: number, at: number): void => {
     work += steps;
     if (work > MAX_WORK)
-      refuse(text, at, `a formula of at most ${MAX_WORK} products when multiplied out`, 'more');
+      refuse(text, at, `a formula of at most ${MAX_WORK} steps when multiplied out`, 'more');
   };
-  const bounded = (terms: Map<Word, Complex>, at: number): Map<Word, Complex> => {
-    if (terms.size > MAX_TERMS) refuse(text, at, `at most ${MAX_TERMS} Pauli strings`, `${terms.size}`);
-    for (const { re, im } of terms.values())
-      for (const p of [re, im]) {
-        if (!(isWithinBits(p.denominator) && [...p.numerators.values()].every(isWithinBits)))
-          refuse(text, at, `coefficients of at most ${MAX_COEFFICIENT_BITS} bits`, 'a longer one');
-        if (p.degrees(free.length).some((d) => d > MAX_DEGREE))
-          refuse(text, at, `powers of a parameter up to ${MAX_DEGREE}`, 'a higher one');
-      }
-    return terms;
+  /** Adds to a coefficient. Looks at the size every time: a sum of many fractions grows with every one of them. */
+  const accumulate = (terms: Map<Word, Complex>, word: Word, { re, im }: Complex, at: number): void => {
+    const old = terms.get(word) ?? COMPLEX_ZERO;
+    const total = { re: old.re.plus(re), im: old.im.plus(im) };
+    if (total.re.isZero() && total.im.isZero()) {
+      terms.delete(word);
+      return;
+    }
+    spend(total.re.size + total.im.size, at);
+    for (const p of [total.re, total.im]) {
+      if (!(isWithinBits(p.denominator) && [...p.numerators.values()].every(isWithinBits)))
+        refuse(text, at, `coefficients of at most ${MAX_COEFFICIENT_BITS} bits`, 'a longer one');
+      if (p.degrees(free.length).some((d) => d > MAX_DEGREE))
+        refuse(text, at, `powers of a parameter up to ${MAX_DEGREE}`, 'a higher one');
+    }
+    terms.set(word, total);
+    if (terms.size > MAX_TERMS) refuse(text, at, `at most ${MAX_TERMS} Pauli strings`, 'more');
   };
   const scalar = (p: Polynomial): Value => ({
     kind: 'scalar',
@@ -250,17 +257,10 @@ function evaluate(
     for (const { negative, node: part } of node.parts) {
       const value = valueAt(part);
       if (value.kind === 'words' || kind === 'scalar') kind = value.kind;
-      spend(value.terms.size, part.at);
-      for (const [word, { re, im }] of value.terms) {
-        const old = terms.get(word) ?? COMPLEX_ZERO;
-        const total = negative
-          ? { re: old.re.minus(re), im: old.im.minus(im) }
-          : { re: old.re.plus(re), im: old.im.plus(im) };
-        if (total.re.isZero() && total.im.isZero()) terms.delete(word);
-        else terms.set(word, total);
-      }
+      for (const [word, coefficient] of value.terms)
+        accumulate(terms, word, negative ? turn(coefficient, 2) : coefficient, part.at);
     }
-    return { kind, terms: bounded(terms, node.at) };
+    return { kind, terms: terms };
   }
 
   function productOf(a: Value, b: Value, at: number): Value {
@@ -277,14 +277,9 @@ function evaluate(
         spend((x.re.size + x.im.size) * (y.re.size + y.im.size), at);
         const { word, phase } = product(u, v);
         if ((phase & 1) === 1 && imaginaryAt < 0) imaginaryAt = at;
-        const old = sum.get(word) ?? COMPLEX_ZERO;
-        const turned = turn(multiply(x, y), phase);
-        const total = { re: old.re.plus(turned.re), im: old.im.plus(turned.im) };
-        if (total.re.isZero() && total.im.isZero()) sum.delete(word);
-        else sum.set(word, total);
-        if (sum.size > MAX_TERMS) refuse(text, at, `at most ${MAX_TERMS} Pauli strings`, 'more');
+        accumulate(sum, word, turn(multiply(x, y), phase), at);
       }
-    return { kind: a.kind === 'scalar' ? b.kind : a.kind, terms: bounded(sum, at) };
+    return { kind: a.kind === 'scalar' ? b.kind : a.kind, terms: sum };
   }
 
   function scalarOf(node: Node, use: string): Polynomial {

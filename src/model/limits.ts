@@ -25,7 +25,7 @@ export const MAX_DEGREE = 256;
 export const MAX_PARAMETERS = 64;
 /** Most Pauli strings in a density, also on the way to it. */
 export const MAX_TERMS = 20_000;
-/** Most products of coefficients that reading one formula may take. */
+/** Most additions and products of monomials that reading one formula may take. */
 export const MAX_WORK = 1_000_000;
 /** Longest numerator or common denominator on the way, in bits. */
 export const MAX_COEFFICIENT_BITS = 4_096;

@@ -121,7 +121,7 @@ export function parseSyntax(text: string): Syntax {
         if (++depth > MAX_NESTING)
           refuse(text, token.at, `at most ${MAX_NESTING} parentheses inside one another`, 'more');
         next++;
-        const node = sum();
+        const node = { ...sum(), at: token.at };
         if (peek().kind !== ')') refuse(text, peek().at, 'an operation or ")"', got(peek()));
         next++;
         depth--;
