@@ -15,7 +15,7 @@ import type { Field } from '../linear/field.ts';
 import { WeightedForest } from '../linear/forest.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
 import { HitSet } from './hit-set.ts';
-import { type EndParent, growthAtEnds, Neighbourhood, windowTable } from './windows.ts';
+import { type End, type EndParent, growthAtEnds, Neighbourhood, windowTable } from './windows.ts';
 
 /** Spins a candidate may have: its packed form indexes an array. */
 export const MAX_SPINS = 15;
@@ -56,6 +56,7 @@ export function aliveStrings(
   const bound = (cells: number) => 2 ** (cellBits * cells);
   const limit = bound(range);
   const cellMask = bound(1) - 1;
+  const windowSize = 2 ** bits;
   // "Nothing in the first cell, X in the second" is no representative: its place is the zero root's.
   const zero = bound(1);
   const forest = new WeightedForest(limit - 1, zero, field);
@@ -108,90 +109,156 @@ export function aliveStrings(
     use();
   };
 
+  // Strings of each range that were alive when last looked at: a scan of the candidates happens once a range.
+  const living: Float64Array[] = [];
+  const livingOf = (cells: number): Float64Array => {
+    const known = living[cells];
+    const list = known === undefined ? scan(bound(cells - 1), bound(cells)) : known.filter(isAlive);
+    living[cells] = list;
+    return list;
+  };
+  const isAlive = (string: number): boolean =>
+    link[string] === 0 || (link[string] !== zero && forest.root(string) !== zero);
+  const scan = (begin: number, end: number): Float64Array => {
+    let list = new Float64Array(1024);
+    let length = 0;
+    for (let string = begin; string < end; string++) {
+      if (link[string] === zero || (string & cellMask) === 0 || !isAlive(string)) continue;
+      if (length === list.length) {
+        const longer = new Float64Array(2 * length);
+        longer.set(list);
+        list = longer;
+      }
+      list[length++] = string;
+    }
+    report();
+    return list.slice(0, length);
+  };
+
+  /** Marks every output of range m that a living string of range ≥ `from` reaches. */
   const mark = (m: number, from: number, hits: HitSet): void => {
     const low = bound(m - 1);
     const high = bound(m);
-    for (let cells = from; cells <= Math.min(range, m + r - 1); cells++)
-      for (let string = bound(cells - 1); string < bound(cells); string++) {
-        if ((string & 0x3ffff) === 0) report();
-        if (link[string] === zero || (string & cellMask) === 0) continue;
-        if (link[string] !== 0 && forest.root(string) === zero) continue;
-        near.visit(string, cells);
+    for (let cells = from; cells <= Math.min(range, m + r - 1); cells++) {
+      const strings = livingOf(cells);
+      for (let at = 0; at < strings.length; at++) {
+        if ((at & 0x3fff) === 0) report();
+        near.visit(strings[at]!, cells);
         for (let i = 0; i < near.count; i++) {
           const output = near.images[i]!;
           if (output >= low && output < high) hits.add(output);
         }
       }
+    }
   };
 
-  /** Rows of one parent (`single`), or of several, over the outputs of range m that are not hit. */
+  /**
+   * One block of growth rows: the outputs with a given last window, for every middle and a list of first windows. All strings in
+   * play are an offset plus the middle times a unit, so the loops touch typed arrays only, in rising order of memory.
+   */
+  const killBlock = (block: Block, middles: number, hits: HitSet | undefined): void => {
+    const { length, outputs, parents, units } = block;
+    for (let middle = 0; middle < middles; middle++) {
+      if ((middle & 0xffff) === 0) report();
+      for (let i = 0; i < length; i++) {
+        const parent = parents[i]! + Math.imul(middle, units[i]!);
+        if (link[parent] === zero) continue;
+        if (hits?.has(outputs[i]! + middle * windowSize)) continue;
+        forest.setZero(parent);
+      }
+    }
+  };
+
+  const tieBlock = (
+    block: Block,
+    right: EndParent,
+    rightUnit: number,
+    middles: number,
+    hits: HitSet | undefined,
+  ): void => {
+    const { length, outputs, windows, parents, units, factors: lefts } = block;
+    const offset = right.image * rightUnit;
+    const coefficient = coefficients[right.value]!;
+    for (let middle = 0; middle < middles; middle++) {
+      if ((middle & 0xffff) === 0) report();
+      const fromRight = offset + Math.imul(middle, windowSize);
+      for (let i = 0; i < length; i++) {
+        const a = fromRight + windows[i]!;
+        const b = parents[i]! + Math.imul(middle, units[i]!);
+        const zeroA = link[a] === zero;
+        if (zeroA && link[b] === zero) continue;
+        if (hits?.has(outputs[i]! + middle * windowSize)) continue;
+        if (zeroA) forest.setZero(b);
+        else if (link[b] === zero) forest.setZero(a);
+        else forest.tie(a, coefficient, b, lefts[i]!);
+      }
+    }
+  };
+
+  const reduceBlock = (
+    lefts: readonly End[],
+    rights: readonly EndParent[],
+    top: number,
+    rightUnit: number,
+    middles: number,
+    hits: HitSet | undefined,
+  ): void => {
+    for (let middle = 0; middle < middles; middle++) {
+      if ((middle & 0xffff) === 0) report();
+      const from = middle * windowSize;
+      for (const left of lefts) {
+        if (hits?.has(top + from + left.window)) continue;
+        count = 0;
+        let short = true;
+        for (const q of rights)
+          short &&= addParent(q.image * rightUnit + from + left.window, coefficients[q.value]!);
+        for (const q of left.parents)
+          short &&= addParent((q.image + from + top) / bound(q.lost), coefficients[q.value]!);
+        if (short) use();
+      }
+    }
+  };
+
+  /** The growth rows of the outputs of range m that are not hit: those of one parent (`single`), or of several. */
   const growth = (m: number, hits: HitSet | undefined, single: boolean): void => {
     const middles = bound(m - 2 * r);
     const rightUnit = bound(m - r);
-    const windowSize = 2 ** bits;
     const lost = Math.max(1, m - range);
     const shrinking = (parents: readonly EndParent[]) => parents.filter((q) => q.lost >= lost);
     const lefts = ends.first.map((end) => ({ window: end.window, parents: shrinking(end.parents) }));
-    const leftOf = (parents: number) => lefts.filter((l) => l.parents.length === parents);
-    const none = leftOf(0);
-    const one = leftOf(1);
+    const leftsWith = (parents: number) => lefts.filter((l) => l.parents.length === parents);
+    const [none, one] = [leftsWith(0), leftsWith(1)];
+    const several = lefts.filter((l) => l.parents.length > 1);
     for (const last of ends.last) {
       const rights = shrinking(last.parents);
       const top = last.window * rightUnit;
-      const killed = single ? (rights.length === 1 ? none : rights.length === 0 ? one : []) : [];
-      const tied = !single && rights.length === 1 ? one : [];
-      const rest = single
-        ? []
-        : lefts.filter(
-            (l) => l.parents.length + rights.length > 1 && !(rights.length === 1 && l.parents.length === 1),
-          );
-      if (killed.length + tied.length + rest.length === 0) continue;
-      // A parent is at offset + middle·unit: lists of numbers keep the loops over the middle free of objects.
-      const leftOffset = (q: EndParent) => Math.floor(q.image / bound(q.lost)) + top / bound(q.lost);
       const right = rights[0];
-      const rightOffset = right === undefined ? 0 : right.image * rightUnit;
-      const rightCoefficient = right === undefined ? 0 : coefficients[right.value]!;
-      const offsets = killed.map((l) =>
-        right === undefined ? leftOffset(l.parents[0]!) : rightOffset + l.window,
-      );
-      const units = killed.map((l) =>
-        right === undefined ? windowSize / bound(l.parents[0]!.lost) : windowSize,
-      );
-      const windows = killed.map((l) => l.window);
-      const tieWindows = tied.map((l) => l.window);
-      const tieOffsets = tied.map((l) => leftOffset(l.parents[0]!));
-      const tieUnits = tied.map((l) => windowSize / bound(l.parents[0]!.lost));
-      const tieCoefficients = tied.map((l) => coefficients[l.parents[0]!.value]!);
-      for (let middle = 0; middle < middles; middle++) {
-        if ((middle & 0xffff) === 0) report();
-        for (let i = 0; i < offsets.length; i++) {
-          const parent = offsets[i]! + middle * units[i]!;
-          if (link[parent] === zero) continue;
-          if (hits?.has(top + middle * windowSize + windows[i]!)) continue;
-          forest.setZero(parent);
-        }
-        const fromRight = rightOffset + middle * windowSize;
-        for (let i = 0; i < tieOffsets.length; i++) {
-          const a = fromRight + tieWindows[i]!;
-          const b = tieOffsets[i]! + middle * tieUnits[i]!;
-          if (link[a] === zero && link[b] === zero) continue;
-          if (hits?.has(top + middle * windowSize + tieWindows[i]!)) continue;
-          forest.tie(a, rightCoefficient, b, tieCoefficients[i]!);
-        }
-        for (const l of rest) {
-          if (hits?.has(top + middle * windowSize + l.window)) continue;
-          count = 0;
-          let short = true;
-          for (const q of rights)
-            short &&= addParent(q.image * rightUnit + middle * windowSize + l.window, coefficients[q.value]!);
-          for (const q of l.parents)
-            short &&= addParent(
-              leftOffset(q) + (middle * windowSize) / bound(q.lost),
-              coefficients[q.value]!,
-            );
-          if (short) use();
-        }
+      const leftParents = (ls: readonly End[]): Block =>
+        blockOf(ls, top, (l) => {
+          const q = l.parents[0]!;
+          return {
+            parent: (q.image + top) / bound(q.lost),
+            unit: windowSize / bound(q.lost),
+            factor: coefficients[q.value]!,
+          };
+        });
+      if (single) {
+        if (right === undefined) killBlock(leftParents(one), middles, hits);
+        else if (rights.length === 1)
+          killBlock(
+            blockOf(none, top, (l) => ({
+              parent: right.image * rightUnit + l.window,
+              unit: windowSize,
+              factor: 0,
+            })),
+            middles,
+            hits,
+          );
+        continue;
       }
+      if (rights.length === 1) tieBlock(leftParents(one), right!, rightUnit, middles, hits);
+      const longer = rights.length > 1 ? lefts : several;
+      if (longer.length > 0) reduceBlock(longer, rights, top, rightUnit, middles, hits);
     }
   };
 
@@ -213,11 +280,40 @@ export function aliveStrings(
     report();
   }
 
-  let alive = 0;
-  const isAlive = (string: number) =>
-    (string & cellMask) !== 0 && link[string] !== zero && forest.root(string) !== zero;
-  for (let string = 1; string < limit; string++) if (isAlive(string)) alive++;
-  const list = new Float64Array(alive);
-  for (let string = 1, at = 0; string < limit; string++) if (isAlive(string)) list[at++] = string;
+  const alive = Array.from({ length: range }, (_, i) => livingOf(i + 1));
+  const list = new Float64Array(alive.reduce((sum, strings) => sum + strings.length, 0));
+  let at = 0;
+  for (const strings of alive) {
+    list.set(strings, at);
+    at += strings.length;
+  }
   return list;
+}
+
+/** Growth rows that differ in their first window only; entry i of each array belongs to one window. */
+interface Block {
+  readonly length: number;
+  readonly windows: Int32Array;
+  /** Outputs at middle 0; with longer interactions they pass 32 bits, parents never do. */
+  readonly outputs: Float64Array;
+  /** Parent at middle 0, and what it gains a middle. */
+  readonly parents: Int32Array;
+  readonly units: Int32Array;
+  readonly factors: Float64Array;
+}
+
+function blockOf(
+  lefts: readonly End[],
+  top: number,
+  of: (left: End) => { parent: number; unit: number; factor: number },
+): Block {
+  const rows = lefts.map(of);
+  return {
+    length: rows.length,
+    windows: Int32Array.from(lefts, (l) => l.window),
+    outputs: Float64Array.from(lefts, (l) => top + l.window),
+    parents: Int32Array.from(rows, (row) => row.parent),
+    units: Int32Array.from(rows, (row) => row.unit),
+    factors: Float64Array.from(rows, (row) => row.factor),
+  };
 }
