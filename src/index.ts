@@ -22,6 +22,14 @@ export {
 } from './algebra/word.ts';
 export { CancelledError, HoldfastError, InputError, LimitError, VerificationError } from './errors.ts';
 export { Chain, MAX_CELL, type Reflection } from './lattice/chain.ts';
+export type {
+  CatalogueEntry,
+  FamilyEntry,
+  PublishedStatement,
+  PublishedStatus,
+  Source,
+} from './model/catalogue/entry.ts';
+export { CATALOGUE, catalogueEntry, catalogueModel, FAMILIES } from './model/catalogue/index.ts';
 export {
   type Family,
   type FormulaOptions,
