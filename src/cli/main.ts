@@ -46,11 +46,17 @@ export async function main(argv: readonly string[]): Promise<number> {
 
 class HelpWanted extends Error {}
 
+/**
+ * A formula may begin with a minus sign: one dash and a Pauli letter somewhere behind it. No option looks so (`-h` is the only short
+ * one); a blank before it keeps the option parser away.
+ */
+const FORMULA = /^-(?!-).*[IXYZ]/s;
+
 function inputOf(command: Command, args: readonly string[], signal: AbortSignal): CommandInput {
   let parsed: ReturnType<typeof parseArgs>;
   try {
     parsed = parseArgs({
-      args: [...args],
+      args: args.map((arg) => (FORMULA.test(arg) ? ` ${arg}` : arg)),
       options: { ...command.options, help: { type: 'boolean', short: 'h' } },
       allowPositionals: true,
       strict: true,
@@ -65,7 +71,7 @@ function inputOf(command: Command, args: readonly string[], signal: AbortSignal)
   if (parsed.values['help'] === true) throw new HelpWanted();
   return {
     values: parsed.values as CommandInput['values'],
-    positionals: parsed.positionals,
+    positionals: parsed.positionals.map((arg) => (FORMULA.test(arg.slice(1)) ? arg.slice(1) : arg)),
     out: (text) => void process.stdout.write(text),
     note: (text) => void process.stderr.write(text),
     interactive: process.stderr.isTTY === true,

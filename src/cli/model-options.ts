@@ -22,8 +22,7 @@ export const MODEL_OPTIONS = {
 
 /** The lines about the model on a subcommand's help page. */
 export const MODEL_HELP = `Model:
-  FORMULA               the density of H, exact: "XX + YY + 1/2 ZZ + h X"; "-" reads it from standard input,
-                        a formula that begins with a minus sign goes last, after "--"
+  FORMULA               the density of H, exact: "XX + YY + 1/2 ZZ + h X"; "-" reads it from standard input
   --set NAME=VALUE      the value of a parameter, an integer, a fraction or a decimal; once a parameter
   --cell N              spins in the repeating unit (1): words run along the spins, H sums translates by N spins
   --model FILE          a JSON model instead of a formula; "-" reads it from standard input`;

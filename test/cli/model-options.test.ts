@@ -34,9 +34,22 @@ describe('a model on the command line', () => {
     const script = `import { modelFromOptions } from ${JSON.stringify(new URL('../../src/cli/model-options.ts', import.meta.url).href)};
       console.log(String((await modelFromOptions({ positionals: ['-'], values: {} })).density));`;
     const path = file('stdin.mts', script);
-    const run = (input: string) => execFileSync('npx', ['tsx', path], { input, encoding: 'utf8' }).trim();
+    const run = (input: string) =>
+      execFileSync(process.execPath, ['--import', 'tsx', path], { input, encoding: 'utf8' }).trim();
     expect(run('XX +\n 3 Z\n')).toBe('XX + 3 Z');
     expect(run(' {"terms": [{"word": "ZZ", "coefficient": "1/2"}]}\n')).toBe('1/2 ZZ');
+  });
+
+  test('a formula may begin with a minus sign, before or behind the options', () => {
+    const main = new URL('../../src/cli/main.ts', import.meta.url).pathname;
+    const run = (...args: string[]) =>
+      execFileSync(process.execPath, ['--import', 'tsx', main, 'search', ...args], { encoding: 'utf8' });
+    const answer = run('XX - Z', '--range', '2', '--json').replace(/"milliseconds".*/, '');
+    for (const args of [
+      ['-h Z + XX', '--set', 'h=1', '--range', '2', '--json'],
+      ['--range=2', '--json', '-Z+XX'],
+    ])
+      expect(run(...args).replace(/"milliseconds".*/, '')).toBe(answer);
   });
 
   test('a family keeps what has no value', async () => {
