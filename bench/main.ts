@@ -21,6 +21,7 @@ ${Object.entries(BENCHES)
   .join('\n')}
 
   --smoke          small sizes, one sample
+  --large          the largest sizes too: half an hour, ten gigabytes
   --range A-B      these ranges instead of the usual ones
   --model NAME     this model only, may be repeated: ${MODELS.map((m) => m.name).join(', ')}
   --samples N      samples a point, 5; fewer where a point takes long
@@ -33,6 +34,7 @@ async function main(): Promise<number> {
     allowPositionals: true,
     options: {
       smoke: { type: 'boolean', default: false },
+      large: { type: 'boolean', default: false },
       range: { type: 'string' },
       model: { type: 'string', multiple: true },
       samples: { type: 'string' },
@@ -57,6 +59,7 @@ async function main(): Promise<number> {
   const [from, to] = [Number(range?.[1]), Number(range?.[2] ?? range?.[1])];
   const options: BenchOptions = {
     smoke: values.smoke,
+    large: values.large,
     ranges: range === undefined ? undefined : Array.from({ length: to - from + 1 }, (_, i) => from + i),
     models: values.model,
     samples: Math.floor(samples),

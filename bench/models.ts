@@ -16,6 +16,8 @@ export interface BenchModel {
   dimension(range: number): number;
   readonly smoke: readonly number[];
   readonly usual: readonly number[];
+  /** Beyond the usual ones. */
+  readonly large: readonly number[];
   readonly targets: Readonly<Record<number, Target>>;
 }
 
@@ -51,6 +53,7 @@ export const MODELS: readonly BenchModel[] = [
     dimension: () => 1,
     smoke: SMOKE,
     usual: USUAL,
+    large: [13, 14, 15],
     targets: GOAL,
   },
   {
@@ -61,6 +64,7 @@ export const MODELS: readonly BenchModel[] = [
     dimension: () => 1,
     smoke: SMOKE,
     usual: USUAL,
+    large: [13, 14, 15],
     targets: GOAL,
   },
   {
@@ -71,6 +75,7 @@ export const MODELS: readonly BenchModel[] = [
     dimension: (range) => range - 1,
     smoke: SMOKE,
     usual: USUAL,
+    large: [13, 14, 15],
     targets: GOAL,
   },
   {
@@ -81,6 +86,7 @@ export const MODELS: readonly BenchModel[] = [
     dimension: () => 1,
     smoke: SMOKE,
     usual: USUAL,
+    large: [13, 14],
     targets: times(3),
   },
   {
@@ -91,6 +97,7 @@ export const MODELS: readonly BenchModel[] = [
     dimension: (range) => 2 * (range - 1),
     smoke: SMOKE,
     usual: USUAL,
+    large: [13, 14],
     targets: times(3),
   },
   {
@@ -101,6 +108,7 @@ export const MODELS: readonly BenchModel[] = [
     dimension: () => 4,
     smoke: SMOKE,
     usual: USUAL,
+    large: [13, 14],
     targets: times(6),
   },
   {
@@ -111,6 +119,7 @@ export const MODELS: readonly BenchModel[] = [
     dimension: (range) => range + 1,
     smoke: [2, 3],
     usual: [2, 3, 4, 5],
+    large: [6],
     targets: {},
   },
 ];

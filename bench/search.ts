@@ -7,11 +7,15 @@ import type { PointAnswer, PointRequest } from './point.ts';
 import { megabytes, ratio, seconds, type Table } from './table.ts';
 
 export interface Point extends Spread {
+  /** Median of the processor time. */
+  readonly processor: number;
   readonly answer: PointAnswer;
 }
 
 /** As many samples as asked for while they stay cheap; long points get fewer. */
 const BUDGET_SECONDS = 30;
+/** Wall time over processor time from which on a point is marked: one thread that was not left alone. */
+const BUSY = 1.2;
 
 /**
  * @throws Error when a run fails or its answer is not the known one: a wrong answer has no speed
@@ -19,6 +23,7 @@ const BUDGET_SECONDS = 30;
 export async function measurePoint(model: BenchModel, range: number, samples: number): Promise<Point> {
   const request: PointRequest = { formula: model.formula, cell: model.cell, range };
   const times: number[] = [];
+  const processor: number[] = [];
   let answer: PointAnswer | undefined;
   let spent = 0;
   while (times.length < samples && (times.length < 1 || spent < BUDGET_SECONDS)) {
@@ -41,9 +46,15 @@ export async function measurePoint(model: BenchModel, range: number, samples: nu
       );
     if (answer === undefined || one.peak > answer.peak) answer = one;
     times.push(one.seconds);
+    processor.push(one.processorSeconds);
     spent += one.seconds;
   }
-  return { ...spreadOf(times), answer: answer! };
+  return { ...spreadOf(times), processor: spreadOf(processor).median, answer: answer! };
+}
+
+function rangesOf(model: BenchModel, { smoke, large }: BenchOptions): readonly number[] {
+  if (smoke) return model.smoke;
+  return large ? [...model.usual, ...model.large] : model.usual;
 }
 
 export async function benchSearch(options: BenchOptions): Promise<Table[]> {
@@ -58,7 +69,7 @@ export async function benchSearch(options: BenchOptions): Promise<Table[]> {
     const before: number[] = [];
     if ('missing' in pass) notes.add(pass.missing);
     let previous: { readonly range: number; readonly median: number } | undefined;
-    for (const range of options.ranges ?? (options.smoke ? model.smoke : model.usual)) {
+    for (const range of options.ranges ?? rangesOf(model, options)) {
       const point = await measurePoint(model, range, options.samples);
       const entries = nonZeros(h, range);
       let passSeconds = Number.NaN;
@@ -79,6 +90,10 @@ export async function benchSearch(options: BenchOptions): Promise<Table[]> {
         const warning = grainWarning(time, grain);
         if (warning !== undefined) notes.add(`Range ${range}: ${warning}.`);
       }
+      if (point.median > BUSY * point.processor)
+        notes.add(
+          `Range ${range}: the search waited for the processor (${seconds(point.processor)} of work); the machine was busy.`,
+        );
       const target = model.targets[range];
       const peak = point.answer.peak;
       const met =
@@ -102,9 +117,6 @@ export async function benchSearch(options: BenchOptions): Promise<Table[]> {
       ]);
       previous = { range, median: point.median };
       before.push(point.answer.before);
-      notes.add(
-        `Of the memory, ${megabytes(point.answer.before)} are Node's and the loader's before the search begins.`,
-      );
       options.progress(`${model.name}: range ${range} in ${seconds(point.median)}`);
     }
     tables.push({
