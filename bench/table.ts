@@ -23,7 +23,7 @@ export function markdown({ title, columns, rows, notes }: Table): string {
     line(columns),
     `| ${widths.map((w) => `${'-'.repeat(w - 1)}:`).join(' | ')} |`,
     ...rows.map(line),
-    ...(notes.length > 0 ? ['', ...notes.map((note) => `* ${note}`)] : []),
+    ...(notes.length > 0 ? ['', ...notes.map((note) => `- ${note}`)] : []),
   ].join('\n');
 }
 

@@ -6,6 +6,8 @@
 import { describe, expect, it } from 'vitest';
 import { findLibraries } from '../../bench/external/libraries.ts';
 import { type PlainTerm, plainMatrix } from '../../bench/external/matrix.ts';
+import { textFromWord } from '../../src/algebra/word.ts';
+import { CATALOGUE, catalogueModel } from '../../src/model/catalogue/index.ts';
 import { parseModel } from '../../src/model/formula.ts';
 import { searchNow } from '../../src/search/search.ts';
 
@@ -147,4 +149,20 @@ describe.each(
       expect(answer).toMatchObject({ rank: result.candidates - result.charges.length });
     },
   );
+});
+
+describe('ranks of the catalogue by FLINT', () => {
+  const flint = libraries.find((entry) => 'library' in entry && entry.library.name === 'FLINT');
+  it.skipIf(flint === undefined).each(CATALOGUE)('$id: $formula', async (entry) => {
+    const h = catalogueModel(entry);
+    const { cell } = h.chain;
+    const range = cell === 1 ? 4 : 2;
+    const terms = [...h.density.numerators].map(
+      ([word, value]) => [Number(value), textFromWord(word)] as const,
+    );
+    if (flint === undefined || 'missing' in flint) return;
+    const matrix = plainMatrix(terms, cell, range);
+    const answer = await flint.library.rank(matrix, { seconds: 50, gigabytes: 2, prime: 1_000_003 });
+    expect(answer).toMatchObject({ rank: matrix.columns - searchNow(h, { range }).charges.length });
+  });
 });
