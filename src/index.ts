@@ -38,6 +38,7 @@ export {
   parseDensity,
   parseFamily,
   parseModel,
+  parseSites,
 } from './model/formula.ts';
 export { type Hamiltonian, hamiltonianOf } from './model/hamiltonian.ts';
 export {
@@ -49,6 +50,7 @@ export {
   modelJsonSchema,
   readModelDocument,
 } from './model/schema.ts';
+export type { Site, Syntax } from './model/syntax.ts';
 export { CAUTIONS, printResult, type TextOptions } from './report/text.ts';
 export { type BackgroundOptions, search } from './search/background.ts';
 export { type Estimate, estimate } from './search/estimate.ts';

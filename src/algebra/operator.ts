@@ -4,6 +4,8 @@
  * Integers over one positive common denominator, in lowest terms, so two equal operators have equal fields. Every Hermitian
  * operator is such a combination; the two Hermitian products below keep it so. All values are immutable.
  */
+
+import { InputError } from '../errors.ts';
 import {
   type Exact,
   exact,
@@ -25,8 +27,13 @@ export class Operator {
     readonly denominator: bigint,
   ) {}
 
-  /** From integer coefficients over a common denominator. Zeros are dropped, the rest is brought to lowest terms. */
+  /**
+   * From integer coefficients over a common denominator. Zeros are dropped, the rest is brought to lowest terms.
+   *
+   * @throws InputError on a zero denominator
+   */
   static fromIntegers(numerators: Iterable<readonly [Word, bigint]>, denominator = 1n): Operator {
+    if (denominator === 0n) throw new InputError('operator', 'a denominator other than 0', '0');
     const kept = new Map<Word, bigint>();
     for (const [word, value] of numerators) {
       const sum = (kept.get(word) ?? 0n) + value;

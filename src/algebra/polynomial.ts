@@ -5,7 +5,7 @@
  * monomial is an exponent vector packed into a `bigint`, `EXPONENT_BITS` a variable, so a product of monomials is a sum. Sums and
  * products cost the number of terms, and its product. Variables have no names in here; printing takes them.
  */
-import { HoldfastError } from '../errors.ts';
+import { InputError, show } from '../errors.ts';
 import { type Exact, exact, gcd, lcm, ONE, type Rational, rational, textFromRational } from './rational.ts';
 
 /** A packed exponent vector, variable 0 lowest; the constant monomial is 0n. */
@@ -22,7 +22,7 @@ export function monomialOf(exponents: readonly number[]): Monomial {
   for (let v = exponents.length - 1; v >= 0; v--) {
     const exponent = exponents[v]!;
     if (!(Number.isInteger(exponent) && exponent >= 0 && exponent <= MAX_EXPONENT))
-      throw new HoldfastError(`polynomial: exponent ${exponent} is not an integer from 0 to ${MAX_EXPONENT}`);
+      throw new InputError('polynomial', `exponents from 0 to ${MAX_EXPONENT}`, show(exponent));
     monomial = (monomial << EXPONENT_BITS) | BigInt(exponent);
   }
   return monomial;
@@ -44,8 +44,13 @@ export class Polynomial {
     readonly denominator: bigint,
   ) {}
 
-  /** From integer coefficients over a common denominator ≠ 0; equal monomials add up. */
+  /**
+   * From integer coefficients over a common denominator; equal monomials add up.
+   *
+   * @throws InputError on a zero denominator
+   */
   static fromIntegers(numerators: Iterable<readonly [Monomial, bigint]>, denominator = 1n): Polynomial {
+    if (denominator === 0n) throw new InputError('polynomial', 'a denominator other than 0', '0');
     const kept = new Map<Monomial, bigint>();
     for (const [monomial, value] of numerators) {
       const sum = (kept.get(monomial) ?? 0n) + value;
@@ -146,8 +151,8 @@ export class Polynomial {
   /** The value at a point, one rational a variable. */
   evaluate(point: readonly Rational[]): Rational {
     let numerator = 0n;
-    const denominators = this.degrees(point.length).map((d, v) => point[v]!.denominator ** BigInt(d));
     const degrees = this.degrees(point.length);
+    const denominator = degrees.reduce((d, e, v) => d * point[v]!.denominator ** BigInt(e), this.denominator);
     for (const [monomial, value] of this.numerators) {
       let term = value;
       exponentsOf(monomial, point.length).forEach((e, v) => {
@@ -155,7 +160,7 @@ export class Polynomial {
       });
       numerator += term;
     }
-    return rational(numerator, denominators.reduce((a, b) => a * b, 1n) * this.denominator);
+    return rational(numerator, denominator);
   }
 
   equals(other: Polynomial): boolean {

@@ -27,23 +27,26 @@ const X_PARTS = 0x15555555;
  */
 export function wordFromText(text: string): Word {
   if (text === '') throw new InputError('word', 'letters I, X, Y, Z', show(text));
-  let word = 0n;
-  for (let spin = text.length - 1; spin >= 0; spin--) {
-    const code = LETTERS.indexOf(text[spin]!);
-    if (code < 0)
+  const code = (spin: number): number => {
+    const found = LETTERS.indexOf(text[spin]!);
+    if (found < 0)
       throw new InputError('word', 'letters I, X, Y, Z', show(text[spin]), { text, offset: spin });
-    word = (word << 2n) | BigInt(code);
-  }
-  return word;
+    return found;
+  };
+  // Two letters a hexadecimal digit: linear in the length, where shifts of a growing integer are quadratic.
+  let digits = '0x';
+  if (text.length % 2 === 1) digits += code(text.length - 1);
+  for (let spin = text.length - 1 - (text.length % 2); spin > 0; spin -= 2)
+    digits += (4 * code(spin) + code(spin - 1)).toString(16);
+  return BigInt(digits);
 }
 
 /** Prints a string from spin 0 on, at least `length` letters; `wordFromText` reads it back. The identity prints as `I`. */
 export function textFromWord(word: Word, length = 1): string {
   let text = '';
-  for (let rest = word; rest !== 0n; rest >>= CHUNK_BITS) {
-    let chunk = Number(rest & CHUNK_MASK);
-    const last = rest <= CHUNK_MASK;
-    for (let i = 0; i < 15 && !(last && chunk === 0); i++, chunk >>>= 2) text += LETTERS[chunk & 3];
+  if (word !== 0n) {
+    const digits = word.toString(4);
+    for (let spin = digits.length - 1; spin >= 0; spin--) text += LETTERS[Number(digits[spin])];
   }
   return text.padEnd(length, 'I');
 }
@@ -62,7 +65,7 @@ export function spanOf(word: Word): number {
     const high = Math.floor(value / 2 ** 30);
     return high > 0 ? 15 + ((33 - Math.clz32(high)) >> 1) : (33 - Math.clz32(value)) >> 1;
   }
-  return (word.toString(16).length - 1) * 2 + (Number.parseInt(word.toString(16)[0]!, 16) > 3 ? 2 : 1);
+  return word.toString(4).length;
 }
 
 /** The first spin that is not the identity; the identity has none and gives −1. */

@@ -36,6 +36,8 @@ export interface Syntax {
   /** The parameters in the order in which they appear, with the place of the first appearance. */
   readonly names: ReadonlyMap<string, number>;
   readonly sites: readonly Site[];
+  /** Where the first word stands, if there is one. */
+  readonly wordAt: number | null;
 }
 
 /** @throws InputError with the position of the first token that does not fit */
@@ -43,6 +45,7 @@ export function parseSyntax(text: string): Syntax {
   const tokens = tokenise(text);
   const names = new Map<string, number>();
   const sites: Site[] = [];
+  let wordAt: number | null = null;
   let next = 0;
   let depth = 0;
 
@@ -113,8 +116,11 @@ export function parseSyntax(text: string): Syntax {
         sites.push(token);
         next++;
         return token;
-      case 'number':
       case 'word':
+        wordAt ??= token.at;
+        next++;
+        return token;
+      case 'number':
         next++;
         return token;
       case '(': {
@@ -134,5 +140,5 @@ export function parseSyntax(text: string): Syntax {
 
   const root = sum();
   if (peek().kind !== 'end') refuse(text, peek().at, 'an operation or the end of the formula', got(peek()));
-  return { text, root, names, sites };
+  return { text, root, names, sites, wordAt };
 }

@@ -205,6 +205,7 @@ describe('text', () => {
     expect(() => Operator.of({ XX: 0.5 })).toThrow(InputError);
     expect(() => Operator.of({ XW: 1 })).toThrow(InputError);
     expect(() => Operator.of({ '': 1 })).toThrow(InputError);
+    expect(() => Operator.fromIntegers([[1n, 1n]], 0n)).toThrow(InputError);
     expect(() => zero.plus(Operator.of({ X: 1 })).times(Number.NaN)).toThrow(InputError);
   });
 });

@@ -19,7 +19,7 @@ import {
   wordFromText,
 } from '../../src/algebra/word.ts';
 import { HoldfastError, InputError } from '../../src/errors.ts';
-import { familyAt, parseDensity, parseFamily, parseModel } from '../../src/model/formula.ts';
+import { familyAt, parseDensity, parseFamily, parseModel, parseSites } from '../../src/model/formula.ts';
 import { hamiltonianOf } from '../../src/model/hamiltonian.ts';
 import { MAX_FORMULA_LENGTH, MAX_NESTING, MAX_TERMS, MAX_WORD_LENGTH } from '../../src/model/limits.ts';
 import { property, type Random } from '../support/random.ts';
@@ -516,4 +516,27 @@ test('a Hamiltonian is frozen, and a zero one does not exist', () => {
   expect(() => hamiltonianOf(h.chain, Operator.of({ I: 1 }))).toThrow(HoldfastError);
   expect(parseModel('XX + XY').reflection).toBeNull();
   expect(parseModel('XX + XY + YX').reflection).toBe('spins');
+});
+
+describe('letters on the sites of another lattice', () => {
+  // A window of 3 × 3 sites of a plane, row by row.
+  const plane = (formula: string, parameters = {}): string =>
+    parseSites(
+      formula,
+      ({ sites }) => {
+        const low = [0, 1].map((axis) => Math.min(...sites.map((s) => s.coordinates[axis]!.value)));
+        return ({ coordinates: [x, y] }) => 3 * (y!.value - low[1]!) + x!.value - low[0]!;
+      },
+      parameters,
+    ).toString();
+
+  test('the caller places them', () => {
+    expect(plane('X_{0,0} X_{1,0} + J X_{0,0} X_{0,1}', { J: '1/2' })).toBe('1/2 XIIX + XX');
+    expect(plane('Z_{-1,-1} Z_{0,0}')).toBe('ZIIIZ');
+  });
+
+  test('words have no place', () => {
+    expect(() => plane('X_{0,0} + 2 XX')).toThrow(/got a word at position 13/);
+    expect(() => plane('J X_{0,0}')).toThrow(/no value for J/);
+  });
 });
