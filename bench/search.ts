@@ -1,7 +1,14 @@
 /** The search over a grid of ranges, each sample a fresh process, with the compiled pass beside it. */
 import { buildPass, runPass } from './limit/limit.ts';
 import { clockGrain, grainWarning, run, type Spread, spreadOf } from './measure.ts';
-import { type BenchModel, candidatesOf, hamiltonianOfBench, MODELS, nonZeros } from './models.ts';
+import {
+  type BenchModel,
+  candidatesOf,
+  hamiltonianOfBench,
+  MODELS,
+  nonZeros,
+  type Target,
+} from './models.ts';
 import type { BenchOptions } from './options.ts';
 import type { PointAnswer, PointRequest } from './point.ts';
 import { megabytes, ratio, seconds, type Table } from './table.ts';
@@ -52,6 +59,20 @@ export async function measurePoint(model: BenchModel, range: number, samples: nu
   return { ...spreadOf(times), processor: spreadOf(processor).median, answer: answer! };
 }
 
+/** Each part of a target with a mark; what was not measured is left out. */
+function verdict(target: Target, measured: Readonly<Record<keyof Target, number>>): string {
+  const parts: [keyof Target, string][] = [
+    ['seconds', `${target.seconds} s`],
+    ['megabytes', `${target.megabytes} MB`],
+    ['passes', `${target.passes} passes`],
+    ['growth', `×${target.growth}`],
+  ];
+  return parts
+    .filter(([name]) => target[name] !== undefined && !Number.isNaN(measured[name]))
+    .map(([name, text]) => `${text} ${measured[name] <= target[name]! ? '✓' : '✗'}`)
+    .join(', ');
+}
+
 function rangesOf(model: BenchModel, { smoke, large }: BenchOptions): readonly number[] {
   if (smoke) return model.smoke;
   return large ? [...model.usual, ...model.large] : model.usual;
@@ -96,24 +117,22 @@ export async function benchSearch(options: BenchOptions): Promise<Table[]> {
         );
       const target = model.targets[range];
       const peak = point.answer.peak;
-      const met =
-        target !== undefined &&
-        point.median <= target.seconds &&
-        (target.megabytes === undefined || peak <= target.megabytes * 1e6);
+      const growth = previous?.range === range - 1 ? point.median / previous.median : Number.NaN;
+      const passes = point.median / passSeconds;
       rows.push([
         `${range}`,
         `${candidatesOf(model.cell, range)}`,
         `${point.answer.dimension}`,
         point.samples > 1 ? `${seconds(point.median)} ± ${seconds(point.deviation)}` : seconds(point.median),
         `${point.samples}`,
-        previous?.range === range - 1 ? ratio(point.median / previous.median) : '',
+        ratio(growth),
         megabytes(peak),
         ratio((point.median / entries) * 1e9),
         Number.isNaN(passSeconds) ? '—' : seconds(passSeconds),
-        Number.isNaN(passSeconds) ? '—' : ratio(point.median / passSeconds),
+        ratio(passes),
         target === undefined
           ? ''
-          : `${met ? 'met' : 'missed'}: ${target.seconds} s${target.megabytes === undefined ? '' : `, ${target.megabytes} MB`}`,
+          : verdict(target, { seconds: point.median, megabytes: peak / 1e6, passes, growth }),
       ]);
       previous = { range, median: point.median };
       before.push(point.answer.before);
