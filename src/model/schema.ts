@@ -24,7 +24,7 @@ import {
   MAX_WORD_LENGTH,
   operatorOf,
 } from './limits.ts';
-import { isParameterName } from './tokens.ts';
+import { PARAMETER_NAME } from './tokens.ts';
 
 const EXACT = 'expected an exact number: an integer, or a text such as "1/3" or "0.35"';
 /** Printable text: control characters would reach terminals and pages. */
@@ -71,11 +71,9 @@ const formulaModel = z.strictObject({
   ...common,
   formula: z.string().min(1).max(MAX_FORMULA_LENGTH),
   parameters: z
-    .record(
-      z.string().max(MAX_NAME_LENGTH).refine(isParameterName, 'expected the name of a parameter'),
-      number,
-    )
+    .record(z.string().max(MAX_NAME_LENGTH).regex(PARAMETER_NAME, 'expected the name of a parameter'), number)
     .refine((all) => Object.keys(all).length <= MAX_PARAMETERS, `at most ${MAX_PARAMETERS} parameters`)
+    .meta({ maxProperties: MAX_PARAMETERS })
     .optional(),
 });
 

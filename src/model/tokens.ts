@@ -36,8 +36,9 @@ export function refuse(text: string, offset: number, expected: string, got: stri
 
 /** Greek capitals that look like Latin letters stay out: an imitation X must not pass for a parameter. */
 const NAME_LETTER = 'A-Za-zα-ωΓΔΘΛΞΠΣΦΨΩϑϕϵ';
-const NAME = new RegExp(`^[${NAME_LETTER}][${NAME_LETTER}0-9_']*$`, 'u');
-const RUN = new RegExp(`[${NAME_LETTER}][${NAME_LETTER}0-9_']*`, 'uy');
+/** The name of a parameter: letters, digits, `_` and `'`; not a word over I X Y Z, nor what looks like a site. */
+export const PARAMETER_NAME = new RegExp(`^(?![IXYZ]+(?:\\d*$|_))[${NAME_LETTER}][${NAME_LETTER}0-9_']*$`);
+const RUN = new RegExp(`[${NAME_LETTER}][${NAME_LETTER}0-9_']*`, 'y');
 const PAULI = /^[IXYZ]+$/;
 const SITE = /[IXYZ]_/y;
 const NUMBER = /\d+(?:\.\d+)?|\.\d+/y;
@@ -58,9 +59,9 @@ const SYMBOLS: Readonly<Record<string, '+' | '-' | '*' | '/' | '^' | '(' | ')'>>
   ')': ')',
 });
 
-/** Is this text the name of a parameter? Letters (Latin, or Greek where it cannot be mistaken), digits, `_`, `'`; not a word over I X Y Z. */
+/** Is this text the name of a parameter, and not too long? */
 export function isParameterName(text: string): boolean {
-  return text.length <= MAX_NAME_LENGTH && NAME.test(text) && !/^[IXYZ]+(\d*$|_)/.test(text);
+  return text.length <= MAX_NAME_LENGTH && PARAMETER_NAME.test(text);
 }
 
 /** @throws InputError at the first character that begins no token, and for over-long texts, words, names and numbers */

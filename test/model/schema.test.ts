@@ -1,7 +1,7 @@
 import { describe, expect, test } from 'vitest';
 import { InputError } from '../../src/errors.ts';
 import { parseModel } from '../../src/model/formula.ts';
-import { MAX_TERMS } from '../../src/model/limits.ts';
+import { MAX_NAME_LENGTH, MAX_PARAMETERS, MAX_TERMS } from '../../src/model/limits.ts';
 import {
   familyFromDocument,
   jsonFromModel,
@@ -10,6 +10,7 @@ import {
   modelJsonSchema,
   readModelDocument,
 } from '../../src/model/schema.ts';
+import { PARAMETER_NAME } from '../../src/model/tokens.ts';
 import { property } from '../support/random.ts';
 
 describe('the JSON model', () => {
@@ -68,6 +69,10 @@ describe('the JSON model', () => {
     expect([formula!.additionalProperties, terms!.additionalProperties]).toEqual([false, false]);
     expect([formula!.required, terms!.required]).toEqual([['formula'], ['terms']]);
     expect(terms!.properties['terms']!['maxItems']).toBe(MAX_TERMS);
+    expect(formula!.properties['parameters']).toMatchObject({
+      maxProperties: MAX_PARAMETERS,
+      propertyNames: { maxLength: MAX_NAME_LENGTH, pattern: PARAMETER_NAME.source },
+    });
     expect(formula!.properties['cell']).toMatchObject({ minimum: 1, maximum: 12 });
   });
 });
@@ -140,6 +145,11 @@ describe('what is refused, and where', () => {
     ['a parameter named __proto__', '{"formula": "XX", "parameters": {"__proto__": 1}}', /__proto__/],
     ['parameters in an array', { formula: 'XX', parameters: [] }, /^model\.parameters/],
     ['an unbound parameter', { formula: 'XX + g Z' }, /no value for g at position 6/],
+    [
+      'too many parameters',
+      { formula: 'XX', parameters: Object.fromEntries(Array.from({ length: 65 }, (_, i) => [`a${i}`, 1])) },
+      /^model\.parameters: expected at most 64/,
+    ],
     ['a parameter that is not used', { formula: 'XX', parameters: { g: 1 } }, /does not use/],
     ['control characters in the name', { formula: 'XX', name: 'a\u001b[31m' }, /^model\.name/],
     ['an over-long note', { formula: 'XX', note: 'a'.repeat(10_001) }, /^model\.note/],

@@ -13,6 +13,7 @@ export const annni: CatalogueEntry = {
       statement:
         'Inversion-symmetric chains with next-nearest neighbours: all but two families, which do not contain this one, have no further local charges.',
       source: ZIGZAG,
+      basis: 'seen',
     },
   ],
   computedCounts: [0, 0, 1, 0, 0, 0, 0],

@@ -13,6 +13,7 @@ export const dimerisedXx: CatalogueEntry = {
       statement:
         'Free fermions, by the same transformation as the uniform chain (two-spin cells: computed here).',
       source: CONSERVATION_LAWS,
+      basis: 'from memory',
     },
   ],
   computedCounts: [1, 7, 8, 8],

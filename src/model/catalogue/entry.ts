@@ -12,6 +12,8 @@ export interface Source {
 export interface PublishedStatement {
   readonly statement: string;
   readonly source: Source;
+  /** Was the statement read in the source (its abstract or introduction), or is its wording or a condition quoted from memory? */
+  readonly basis: 'seen' | 'from memory';
 }
 
 /**

@@ -14,6 +14,7 @@ export const exchangeLadder: CatalogueEntry = {
       statement:
         'The permutation of neighbouring four-level cells satisfies the condition of the boost ladder (the model from memory, the condition computed here).',
       source: SINGLE_LAW,
+      basis: 'seen',
     },
   ],
   computedCounts: [15, 1, 1],

@@ -12,6 +12,7 @@ export const heisenberg: CatalogueEntry = {
     {
       statement: 'Closed form of the charge of every range, with Catalan-triangle coefficients.',
       source: HEISENBERG_CHARGES,
+      basis: 'from memory',
     },
   ],
   computedCounts: [3, 1, 1, 1, 1, 1],

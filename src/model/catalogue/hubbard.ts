@@ -9,9 +9,9 @@ export const hubbard: CatalogueEntry = {
   parameters: { U: '1' },
   status: 'integrable',
   published: [
-    { statement: 'The first charge beyond H, of range 3.', source: HUBBARD_FIRST },
-    { statement: 'One charge a range, given in full.', source: HUBBARD_COMPLETE },
-    { statement: 'These are all, up to lower ones.', source: HUBBARD_ALL },
+    { statement: 'The first charge beyond H, of range 3.', source: HUBBARD_FIRST, basis: 'from memory' },
+    { statement: 'One charge a range, given in full.', source: HUBBARD_COMPLETE, basis: 'seen' },
+    { statement: 'These are all, up to lower ones.', source: HUBBARD_ALL, basis: 'seen' },
   ],
   computedCounts: [2, 1, 1, 1],
 };

@@ -13,6 +13,7 @@ export const mixedIsing: CatalogueEntry = {
       statement:
         'All three couplings non-zero: only H and the identity up to half the system, for periodic and for open chains.',
       source: MIXED_ISING,
+      basis: 'seen',
     },
   ],
   computedCounts: [0, 1, 0, 0, 0, 0, 0, 0],

@@ -8,6 +8,8 @@ export const nextNearestHeisenberg: CatalogueEntry = {
   formula: 'J1 (XX + YY + ZZ) + J2 (XIX + YIY + ZIZ)',
   parameters: { J1: '1', J2: '1/2' },
   status: 'non-integrable',
-  published: [{ statement: 'No local charges besides the symmetries and H.', source: NEXT_NEAREST }],
+  published: [
+    { statement: 'No local charges besides the symmetries and H.', source: NEXT_NEAREST, basis: 'seen' },
+  ],
   computedCounts: [3, 0, 1, 0, 0, 0],
 };

@@ -13,6 +13,7 @@ export const staggeredXxBond: CatalogueEntry = {
       statement:
         'Rank-2 interaction with a field in its plane, after a rotation: H is the only translation-invariant local charge.',
       source: CLASSIFICATION,
+      basis: 'from memory',
     },
   ],
   computedCounts: [0, 1, 0, 0, 0, 0],

@@ -12,6 +12,7 @@ export const staggeredZ: CatalogueEntry = {
     {
       statement: 'Three different couplings with a field: H is the only translation-invariant local charge.',
       source: CLASSIFICATION,
+      basis: 'from memory',
     },
   ],
   computedCounts: [0, 1, 0, 0, 0, 0],

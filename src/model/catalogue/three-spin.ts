@@ -8,7 +8,13 @@ export const threeSpin: CatalogueEntry = {
   formula: 'ZZX',
   parameters: {},
   status: 'special',
-  published: [{ statement: 'Free fermions behind strictly local symmetries.', source: THREE_SPIN }],
+  published: [
+    {
+      statement: 'Free fermions behind strictly local symmetries.',
+      source: THREE_SPIN,
+      basis: 'from memory',
+    },
+  ],
   computedCounts: [0, 0, 2, 1, 3, 4, 9, 16],
   caution: 'Strictly local symmetries make the counts grow with the range.',
 };

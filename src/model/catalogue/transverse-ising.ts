@@ -8,6 +8,12 @@ export const transverseIsing: CatalogueEntry = {
   formula: 'ZZ + g X',
   parameters: { g: '2/3' },
   status: 'integrable',
-  published: [{ statement: 'Free fermions: two charges a range in closed form.', source: CONSERVATION_LAWS }],
+  published: [
+    {
+      statement: 'Free fermions: two charges a range in closed form.',
+      source: CONSERVATION_LAWS,
+      basis: 'from memory',
+    },
+  ],
   computedCounts: [0, 2, 2, 2, 2, 2, 2, 2],
 };

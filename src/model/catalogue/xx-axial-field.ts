@@ -8,6 +8,12 @@ export const xxAxialField: CatalogueEntry = {
   formula: 'XX + YY + h Z',
   parameters: { h: '3/7' },
   status: 'integrable',
-  published: [{ statement: 'Free fermions: two charges a range in closed form.', source: CONSERVATION_LAWS }],
+  published: [
+    {
+      statement: 'Free fermions: two charges a range in closed form.',
+      source: CONSERVATION_LAWS,
+      basis: 'from memory',
+    },
+  ],
   computedCounts: [1, 2, 2, 2, 2, 2, 2, 2],
 };

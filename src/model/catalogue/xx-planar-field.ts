@@ -13,6 +13,7 @@ export const xxPlanarField: CatalogueEntry = {
       statement:
         'Rank-2 interaction: integrable only when the field has no component in the plane; otherwise H is the only local charge.',
       source: CLASSIFICATION,
+      basis: 'from memory',
     },
   ],
   computedCounts: [0, 1, 0, 0, 0, 0, 0, 0],

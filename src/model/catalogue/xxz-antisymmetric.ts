@@ -13,6 +13,7 @@ export const xxzAntisymmetric: CatalogueEntry = {
       statement:
         'A rotation that grows from site to site removes the antisymmetric part and leaves an XXZ chain (common practice, from memory); the XXZ chain is integrable.',
       source: CLASSIFICATION,
+      basis: 'from memory',
     },
   ],
   computedCounts: [1, 1, 1, 1],

@@ -12,6 +12,7 @@ export const xxzAxialField: CatalogueEntry = {
     {
       statement: 'Integrable: two couplings equal and the field along the third axis.',
       source: CLASSIFICATION,
+      basis: 'from memory',
     },
   ],
   computedCounts: [1, 1, 1, 1, 1, 1],

@@ -12,6 +12,7 @@ export const xxzTiltedField: CatalogueEntry = {
     {
       statement: 'Two equal couplings: integrable only with the field along the third axis.',
       source: CLASSIFICATION,
+      basis: 'from memory',
     },
   ],
   computedCounts: [0, 1, 0, 0, 0, 0],

@@ -12,8 +12,9 @@ export const xxz: CatalogueEntry = {
     {
       statement: 'One local charge a range from range 2 on; the total Z besides.',
       source: CONSERVATION_LAWS,
+      basis: 'from memory',
     },
-    { statement: 'Integrable without a field.', source: CLASSIFICATION },
+    { statement: 'Integrable without a field.', source: CLASSIFICATION, basis: 'from memory' },
   ],
   computedCounts: [1, 1, 1, 1, 1, 1],
 };

@@ -8,6 +8,12 @@ export const xyAxialField: CatalogueEntry = {
   formula: 'a XX + b YY + h Z',
   parameters: { a: '2', b: '1/3', h: '3/7' },
   status: 'integrable',
-  published: [{ statement: 'Free fermions: two charges a range in closed form.', source: CONSERVATION_LAWS }],
+  published: [
+    {
+      statement: 'Free fermions: two charges a range in closed form.',
+      source: CONSERVATION_LAWS,
+      basis: 'from memory',
+    },
+  ],
   computedCounts: [0, 2, 2, 2, 2, 2],
 };

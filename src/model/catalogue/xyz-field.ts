@@ -12,6 +12,7 @@ export const xyzField: CatalogueEntry = {
     {
       statement: 'No local charge of range 3 up to half the ring, for non-zero couplings, Jx ≠ Jy and h ≠ 0.',
       source: XYZ_FIELD,
+      basis: 'from memory',
     },
   ],
   computedCounts: [0, 1, 0, 0, 0, 0, 0],

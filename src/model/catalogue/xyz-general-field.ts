@@ -13,6 +13,7 @@ export const xyzGeneralField: CatalogueEntry = {
       statement:
         'Three different couplings: integrable only without a field; otherwise H is the only local charge.',
       source: CLASSIFICATION,
+      basis: 'from memory',
     },
   ],
   computedCounts: [0, 1, 0, 0, 0, 0, 0],

@@ -12,8 +12,9 @@ export const xyz: CatalogueEntry = {
     {
       statement: 'One local charge a range, by the boost ladder; explicit forms are given.',
       source: CONSERVATION_LAWS,
+      basis: 'from memory',
     },
-    { statement: 'Integrable without a field.', source: CLASSIFICATION },
+    { statement: 'Integrable without a field.', source: CLASSIFICATION, basis: 'from memory' },
   ],
   computedCounts: [0, 1, 1, 1, 1, 1, 1, 1],
 };

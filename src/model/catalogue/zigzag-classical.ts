@@ -13,6 +13,7 @@ export const zigzagClassical: CatalogueEntry = {
       statement:
         'The classical one of the two integrable families of inversion-symmetric chains with nearest and next-nearest neighbours.',
       source: ZIGZAG,
+      basis: 'seen',
     },
   ],
   computedCounts: [1, 1, 2, 4],

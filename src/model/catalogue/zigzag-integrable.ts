@@ -13,6 +13,7 @@ export const zigzagIntegrable: CatalogueEntry = {
       statement:
         'One of the two integrable families of inversion-symmetric chains with nearest and next-nearest neighbours.',
       source: ZIGZAG,
+      basis: 'seen',
     },
   ],
   computedCounts: [0, 0, 1, 1, 1, 1, 1, 1],

@@ -14,6 +14,7 @@ export const isingInAFieldFamily: FamilyEntry = {
     {
       statement: 'Both fields non-zero: only H. One of them zero: free fermions, or classical.',
       source: MIXED_ISING,
+      basis: 'seen',
     },
   ],
 };

@@ -14,6 +14,7 @@ export const nextNearestHeisenbergFamily: FamilyEntry = {
     {
       statement: 'Both couplings non-zero: no local charges besides the symmetries and H.',
       source: NEXT_NEAREST,
+      basis: 'seen',
     },
   ],
 };

@@ -11,6 +11,10 @@ export const nextNearestIsingFamily: FamilyEntry = {
   assuming: [],
   evidence: 'published',
   published: [
-    { statement: 'Both couplings non-zero: in neither of the two integrable families.', source: ZIGZAG },
+    {
+      statement: 'Both couplings non-zero: in neither of the two integrable families.',
+      source: ZIGZAG,
+      basis: 'seen',
+    },
   ],
 };

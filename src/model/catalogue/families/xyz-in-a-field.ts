@@ -15,6 +15,7 @@ export const xyzInAFieldFamily: FamilyEntry = {
       statement:
         'Three non-zero couplings: integrable without a field, or with two couplings equal and the field along the third axis, or with all couplings equal.',
       source: CLASSIFICATION,
+      basis: 'from memory',
     },
   ],
 };
