@@ -25,7 +25,7 @@ ${Object.entries(BENCHES)
   --range A-B      these ranges instead of the usual ones
   --model NAME     this model only, may be repeated: ${MODELS.map((m) => m.name).join(', ')}
   --samples N      samples a point, 5; fewer where a point takes long
-  --limit SECONDS  time limit of a point of another library, 60
+  --limit SECONDS  time limit of a point of another library, 120
   --write          puts the tables into docs/performance.md
 `;
 
@@ -46,7 +46,7 @@ async function main(): Promise<number> {
   const range = values.range === undefined ? undefined : /^(\d+)(?:-(\d+))?$/.exec(values.range);
   const count = (text: string | undefined, usual: number) => (text === undefined ? usual : Number(text));
   const samples = count(values.samples, values.smoke ? 1 : 5);
-  const limit = count(values.limit, values.smoke ? 20 : 60);
+  const limit = count(values.limit, values.smoke ? 20 : 120);
   const unknown = [
     ...positionals.filter((name) => !(name in BENCHES)),
     ...(values.model ?? []).filter((name) => !MODELS.some((m) => m.name === name)),
