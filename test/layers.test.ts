@@ -64,7 +64,7 @@ function withoutComments(source: string): string {
 }
 
 function importsOf(source: string): Import[] {
-  const code = withoutComments(source);
+  const code = withoutComments(source).replace(/;[ \t]*(?=import\b|export\b)/g, ';\n');
   const found: Import[] = [];
   for (const [, clause, target] of code.matchAll(
     /^(?:import|export)\s+((?:type\s+)?(?:[\w$*]+\s*,?\s*)?(?:\*\s*as\s+[\w$]+|\{[^}]*\}|\*)?)\s*from\s*['"]([^'"]+)['"]/gm,
@@ -121,7 +121,7 @@ import { type E, type F } from './three.ts';
 import * as all from 'four';
 export { g } from './five.ts';
 export * from './six.ts';
-import './seven.ts';
+import './seven.ts'; import * as eleven from 'eleven';
 const later = await import('./eight.ts');
 new Worker(new URL('./nine.ts', import.meta.url));
 import {
@@ -141,6 +141,7 @@ import {
         './eight.ts',
         './nine.ts',
         './ten.ts',
+        'eleven',
       ].sort(),
     );
     expect(found.filter((i) => i.typeOnly).map((i) => i.target)).toEqual(['./two.ts', './three.ts']);
