@@ -19,6 +19,11 @@ export class HitSet {
       : (this.#bits[member >>> 5]! & (1 << (member & 31))) !== 0;
   }
 
+  clear(): void {
+    this.#bits?.fill(0);
+    this.#sparse.clear();
+  }
+
   forEach(visit: (member: number) => void): void {
     if (this.#bits === undefined) {
       for (const member of [...this.#sparse].sort((a, b) => a - b)) visit(member);

@@ -14,8 +14,9 @@ import { LimitError } from '../errors.ts';
 import type { Field } from '../linear/field.ts';
 import { WeightedForest } from '../linear/forest.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
+import { EndCounts, EndPairs } from './end-pairs.ts';
 import { HitSet } from './hit-set.ts';
-import { type End, type EndParent, growthAtEnds, Neighbourhood, windowTable } from './windows.ts';
+import { type End, type EndParent, endParents, Neighbourhood, windowTable } from './windows.ts';
 
 /** Spins a candidate may have: its packed form indexes an array. */
 export const MAX_SPINS = 15;
@@ -32,6 +33,9 @@ export interface Progress {
 
 /** Called every few milliseconds to tenths of a second; whatever it throws stops the search. */
 export type OnProgress = (progress: Progress) => void;
+
+/** Ends of which more than one string in so many is alive are crowded. */
+const CROWDED_SHARE = 64;
 
 /** Rows of more classes than this wait for the elimination of the core. */
 const MAX_CLASSES = 12;
@@ -61,7 +65,7 @@ export function aliveStrings(
   const zero = bound(1);
   const forest = new WeightedForest(limit - 1, zero, field);
   const link = forest.link;
-  const ends = growthAtEnds(h, table);
+  const ends = endParents(h, table);
   const candidates = limit - bound(range - 1);
 
   let layer = 0;
@@ -135,14 +139,15 @@ export function aliveStrings(
     return list.slice(0, length);
   };
 
-  /** Marks every output of range m that a living string of range ≥ `from` reaches. */
-  const mark = (m: number, from: number, hits: HitSet): void => {
+  /** Marks every output of range m that a living string of range ≥ `from` reaches; of range m itself, only strings that count. */
+  const mark = (m: number, from: number, counts: (string: number) => boolean, hits: HitSet): void => {
     const low = bound(m - 1);
     const high = bound(m);
     for (let cells = from; cells <= Math.min(range, m + r - 1); cells++) {
       const strings = livingOf(cells);
       for (let at = 0; at < strings.length; at++) {
         if ((at & 0x3fff) === 0) report();
+        if (cells === m && !counts(strings[at]!)) continue;
         near.visit(strings[at]!, cells);
         for (let i = 0; i < near.count; i++) {
           const output = near.images[i]!;
@@ -219,20 +224,22 @@ export function aliveStrings(
     }
   };
 
-  /** The growth rows of the outputs of range m that are not hit: those of one parent (`single`), or of several. */
-  const growth = (m: number, hits: HitSet | undefined, single: boolean): void => {
+  /**
+   * Rows of the outputs of range m that are not hit and whose end cells are in `ready`: those of one parent (`single`), or of
+   * several. Parents come from the two ends: by growth, or of range m with end cells in `crowded`.
+   */
+  const endRows = (
+    m: number,
+    hits: HitSet | undefined,
+    ready: EndPairs,
+    crowded: EndPairs,
+    single: boolean,
+  ): void => {
     const middles = bound(m - 2 * r);
     const rightUnit = bound(m - r);
     const lost = Math.max(1, m - range);
-    const shrinking = (parents: readonly EndParent[]) => parents.filter((q) => q.lost >= lost);
-    const lefts = ends.first.map((end) => ({ window: end.window, parents: shrinking(end.parents) }));
-    const leftsWith = (parents: number) => lefts.filter((l) => l.parents.length === parents);
-    const [none, one] = [leftsWith(0), leftsWith(1)];
-    const several = lefts.filter((l) => l.parents.length > 1);
     for (const last of ends.last) {
-      const rights = shrinking(last.parents);
       const top = last.window * rightUnit;
-      const right = rights[0];
       const leftParents = (ls: readonly End[]): Block =>
         blockOf(ls, top, (l) => {
           const q = l.parents[0]!;
@@ -242,40 +249,95 @@ export function aliveStrings(
             factor: coefficients[q.value]!,
           };
         });
-      if (single) {
-        if (right === undefined) killBlock(leftParents(one), middles, hits);
-        else if (rights.length === 1)
-          killBlock(
-            blockOf(none, top, (l) => ({
-              parent: right.image * rightUnit + l.window,
-              unit: windowSize,
-              factor: 0,
-            })),
-            middles,
-            hits,
-          );
-        continue;
+      for (let cell = 1; cell <= cellMask; cell++) {
+        if (!ready.has(cell, last.cell)) continue;
+        const rights = last.parents.filter(
+          (q) => q.lost >= lost || (q.lost === 0 && crowded.has(cell, q.cell)),
+        );
+        const lefts = ends.first.flatMap((end) =>
+          end.cell !== cell
+            ? []
+            : [
+                {
+                  ...end,
+                  parents: end.parents.filter(
+                    (q) => q.lost >= lost || (q.lost === 0 && crowded.has(q.cell, last.cell)),
+                  ),
+                },
+              ],
+        );
+        const leftsWith = (parents: number) => lefts.filter((l) => l.parents.length === parents);
+        const right = rights[0];
+        if (single) {
+          if (right === undefined) killBlock(leftParents(leftsWith(1)), middles, hits);
+          else if (rights.length === 1)
+            killBlock(
+              blockOf(leftsWith(0), top, (l) => ({
+                parent: right.image * rightUnit + l.window,
+                unit: windowSize,
+                factor: 0,
+              })),
+              middles,
+              hits,
+            );
+          continue;
+        }
+        if (rights.length === 1) tieBlock(leftParents(leftsWith(1)), right!, rightUnit, middles, hits);
+        const longer = rights.length > 1 ? lefts : lefts.filter((l) => l.parents.length > 1);
+        if (longer.length > 0) reduceBlock(longer, rights, top, rightUnit, middles, hits);
       }
-      if (rights.length === 1) tieBlock(leftParents(one), right!, rightUnit, middles, hits);
-      const longer = rights.length > 1 ? lefts : several;
-      if (longer.length > 0) reduceBlock(longer, rights, top, rightUnit, middles, hits);
+    }
+  };
+
+  const gatherHits = (m: number, hits: HitSet, ready: EndPairs): void => {
+    const lastUnit = bound(m - 1);
+    for (let visit = 0, seen = 0; visit < 2; visit++)
+      hits.forEach((output) => {
+        if (!ready.has(output & cellMask, Math.floor(output / lastUnit))) return;
+        gather(output, m);
+        if ((++seen & 0x3fff) === 0) report();
+      });
+  };
+
+  /**
+   * A layer of outputs, in stages by their two end cells. While most strings of range m with some ends are alive, a mark for each
+   * would cost more than it tells: outputs with such ends wait, and for the others those strings are parents that their end
+   * windows give away, like growth. Each stage thins out the strings for the next.
+   */
+  const sweepLayer = (m: number): void => {
+    const apart = m >= 2 * r;
+    const all = EndPairs.all(cellMask + 1);
+    const none = EndPairs.none(cellMask + 1);
+    if (m > range || !apart) {
+      const hits = apart && m === range + r - 1 ? undefined : new HitSet(bound(m));
+      if (hits !== undefined) mark(m, apart ? m : Math.max(1, m - r + 1), () => true, hits);
+      if (apart) for (const single of [true, false]) endRows(m, hits, all, none, single);
+      if (hits !== undefined) gatherHits(m, hits, all);
+      return;
+    }
+    const hits = new HitSet(bound(m));
+    const lastUnit = bound(m - 1);
+    const crowd = bound(m - 2) / CROWDED_SHARE;
+    for (let pending = all; !pending.isEmpty(); ) {
+      const counts = new EndCounts(cellMask + 1);
+      for (const string of livingOf(m)) counts.add(string & cellMask, Math.floor(string / lastUnit));
+      let crowded = counts.above(crowd);
+      let ready = pending.without(crowded);
+      if (ready.isEmpty()) {
+        // Nothing thins out any more: every living string is marked, whatever it costs.
+        ready = pending;
+        crowded = none;
+      }
+      hits.clear();
+      mark(m, m, (string) => !crowded.has(string & cellMask, Math.floor(string / lastUnit)), hits);
+      for (const single of [true, false]) endRows(m, hits, ready, crowded, single);
+      gatherHits(m, hits, ready);
+      pending = pending.without(ready);
     }
   };
 
   for (layer = range + r - 1; layer >= 1; layer--) {
-    const apart = layer >= 2 * r;
-    const hits = apart && layer === range + r - 1 ? undefined : new HitSet(bound(layer));
-    if (hits !== undefined) mark(layer, apart ? layer : Math.max(1, layer - r + 1), hits);
-    if (apart) {
-      growth(layer, hits, true);
-      growth(layer, hits, false);
-    }
-    if (hits !== undefined)
-      for (let visit = 0, seen = 0; visit < 2; visit++)
-        hits.forEach((output) => {
-          gather(output, layer);
-          if ((++seen & 0x3fff) === 0) report();
-        });
+    sweepLayer(layer);
     visited += bound(layer);
     report();
   }

@@ -134,30 +134,36 @@ export class Neighbourhood {
   }
 }
 
-/** A string that reaches an output by growth at one end: the window of the output there, with the end cells gone. */
+/** A string that reaches an output by a term on its end cell: the window of the output there, before the term has acted. */
 export interface EndParent {
   /** The window after the term has been taken off. */
   readonly image: number;
-  /** Identity cells at the end that has shrunk: the parent's range is so much less. */
+  /** Identity cells at that end: the parent's range is so much less; 0 where the term only changed the end. */
   readonly lost: number;
+  /** Content of the end cell of the image, 0 when it is lost. */
+  readonly cell: number;
   /** Index into the table's values of the coefficient. */
   readonly value: number;
 }
 
 export interface End {
   readonly window: number;
+  /** Content of the end cell. */
+  readonly cell: number;
   readonly parents: readonly EndParent[];
 }
 
 /**
- * Growth at the two ends: for each content of the first (last) r cells of an output, what it may have grown from there.
- * Outputs of 2r cells or more have separate ends, and a parent of smaller range must come from one of them.
+ * The two ends: for each content of the first (last) r cells of an output, the strings that terms on the end cell come from.
+ * Outputs of 2r cells or more have separate ends, and a parent of smaller range must have grown at one of them.
  */
-export function growthAtEnds(h: Hamiltonian, table: WindowTable): { first: End[]; last: End[] } {
+export function endParents(h: Hamiltonian, table: WindowTable): { first: End[]; last: End[] } {
   const { cellBits, bits } = table;
   const cellMask = 2 ** cellBits - 1;
   const cells = bits / cellBits;
   const valueIndex = new Map(table.values.map((v, i) => [v, i]));
+  const cellFrom = (window: number, cell: number, side: 'first' | 'last') =>
+    (window >>> (cellBits * (side === 'first' ? cell : cells - 1 - cell))) & cellMask;
   const parentsOf = (window: number, side: 'first' | 'last'): EndParent[] => {
     const parents: EndParent[] = [];
     for (const [word, value] of h.density.numerators) {
@@ -167,18 +173,22 @@ export function growthAtEnds(h: Hamiltonian, table: WindowTable): { first: End[]
       if ((phase & 1) === 0) continue;
       const image = term ^ window;
       let lost = 0;
-      const isGone = (cell: number) =>
-        ((image >>> (cellBits * (side === 'first' ? cell : cells - 1 - cell))) & cellMask) === 0;
-      while (isGone(lost)) lost++;
-      if (lost > 0) parents.push({ image, lost, value: valueIndex.get(phase === 1 ? value : -value)! });
+      while (cellFrom(image, lost, side) === 0) lost++;
+      parents.push({
+        image,
+        lost,
+        cell: cellFrom(image, 0, side),
+        value: valueIndex.get(phase === 1 ? value : -value)!,
+      });
     }
     return parents;
   };
   const first: End[] = [];
   const last: End[] = [];
   for (let window = 0; window < 2 ** bits; window++) {
-    if ((window & cellMask) !== 0) first.push({ window, parents: parentsOf(window, 'first') });
-    if (window >>> (bits - cellBits) !== 0) last.push({ window, parents: parentsOf(window, 'last') });
+    const [a, b] = [cellFrom(window, 0, 'first'), cellFrom(window, 0, 'last')];
+    if (a !== 0) first.push({ window, cell: a, parents: parentsOf(window, 'first') });
+    if (b !== 0) last.push({ window, cell: b, parents: parentsOf(window, 'last') });
   }
   return { first, last };
 }
