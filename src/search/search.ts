@@ -9,9 +9,10 @@ import { type Rational, rational } from '../algebra/rational.ts';
 import type { Word } from '../algebra/word.ts';
 import { InputError, show, VerificationError } from '../errors.ts';
 import { type Field, PRIME_BOUND, primeField, primesBelow } from '../linear/field.ts';
+import type { SparseVector } from '../linear/sparse.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
 import { assemble, type RestrictedSystem } from './assemble.ts';
-import { type IntegerVector, liftCharges, type Mirror, modularBasis } from './charges.ts';
+import { type IntegerVector, liftCharges, type Mirror, type ModularBasis, modularBasis } from './charges.ts';
 import type { Charge, SearchResult } from './result.ts';
 import { aliveStrings, type OnProgress } from './sweep.ts';
 
@@ -49,10 +50,11 @@ export function searchNow(h: Hamiltonian, options: SearchOptions): SearchResult 
     const field = next.value;
     const alive = assemble(h, aliveStrings(h, range, field, onProgress), range, solving);
     const found = modularBasis(alive.matrix, mirrorOf(h, alive.strings), field);
-    const system = restrictedTo(h, alive, [...found.even, ...found.odd], range);
-    const mirror = mirrorOf(h, system.strings);
-    const basis = modularBasis(system.matrix, mirror, field);
-    const lifted = liftCharges(system.matrix, mirror, { basis, field }, fields, () => solving(1));
+    solving(0.5);
+    const { system, basis } = restricted(h, alive, found, range);
+    const lifted = liftCharges(system.matrix, mirrorOf(h, system.strings), { basis, field }, fields, () =>
+      solving(1),
+    );
     if (!lifted.ok) continue;
     const charges = lifted.charges
       .map((charge) => chargeOf(h, system.strings, charge))
@@ -86,16 +88,22 @@ function* fieldsBelow(bound: number): Generator<Field> {
 }
 
 /** The columns that charges use. Later primes need no others, and the exact check sees every equation that meets them. */
-function restrictedTo(
+function restricted(
   h: Hamiltonian,
   system: RestrictedSystem,
-  vectors: readonly { readonly columns: readonly number[] }[],
+  basis: ModularBasis,
   range: number,
-): RestrictedSystem {
-  const used = new Uint8Array(system.strings.length);
-  for (const v of vectors) for (const c of v.columns) used[c] = 1;
-  const strings = system.strings.filter((_, c) => used[c] === 1);
-  return strings.length === system.strings.length ? system : assemble(h, strings, range);
+): { system: RestrictedSystem; basis: ModularBasis } {
+  const renumbered = new Int32Array(system.strings.length);
+  for (const v of [...basis.even, ...basis.odd]) for (const c of v.columns) renumbered[c] = 1;
+  const strings = system.strings.filter((_, c) => renumbered[c] === 1);
+  let count = 0;
+  for (let c = 0; c < renumbered.length; c++) if (renumbered[c] === 1) renumbered[c] = count++;
+  const moved = (v: SparseVector) => ({ columns: v.columns.map((c) => renumbered[c]!), values: v.values });
+  return {
+    system: assemble(h, strings, range),
+    basis: { even: basis.even.map(moved), odd: basis.odd.map(moved) },
+  };
 }
 
 function mirrorOf(h: Hamiltonian, strings: Float64Array): Mirror {
