@@ -91,7 +91,8 @@ describe('the notation', () => {
     expect(density('X_0 X_0 Y_1')).toBe('Y');
     expect(density('X_0 Y_0 Z_1 X_1')).toBe('-ZY');
     expect(density('X_0 Y_0 Z_2 + Y_0 X_0 Z_2 + X_0')).toBe('X');
-    expect(() => density('X_0 Y_0')).toThrow(/anti-Hermitian/);
+    expect(() => density('X_0 Y_0')).toThrow(/anti-Hermitian part i \(1\) Z/);
+    expect(() => density('Y_0 X_0')).toThrow(/anti-Hermitian part i \(-1\) Z/);
     expect(() => density('2 X_0 Z_1 Y_0')).toThrow(/anti-Hermitian/);
   });
 });
