@@ -20,6 +20,15 @@ export {
   weightOf,
   wordFromText,
 } from './algebra/word.ts';
+export {
+  type CertificateOptions,
+  certificateBytes,
+  certificateNow,
+  certificateOf,
+} from './certificate/certificate.ts';
+export { statementOf } from './certificate/document.ts';
+export { VERSION } from './certificate/version.ts';
+export { type CheckOptions, check, checkNow, type Verdict } from './check/check.ts';
 export { CancelledError, HoldfastError, InputError, LimitError, VerificationError } from './errors.ts';
 export { Chain, MAX_CELL, type Reflection } from './lattice/chain.ts';
 export type {

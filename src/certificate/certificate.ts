@@ -1,0 +1,120 @@
+/** From the result of a search to a certificate: a text from which anyone can check the result without trusting the search. */
+import { CancelledError, LimitError, VerificationError } from '../errors.ts';
+import { type Field, PRIME_BOUND, primeField, primesBelow } from '../linear/field.ts';
+import type { SearchResult } from '../search/result.ts';
+import { MAX_SPINS } from '../search/sweep.ts';
+import { independentRows } from './core.ts';
+import { documentText, type Evidence } from './document.ts';
+import { Replay } from './replay.ts';
+
+export interface CertificateOptions {
+  /** Called about every 50 milliseconds with the share of the work done, 0 … 1. */
+  readonly onProgress?: (done: number) => void;
+  readonly signal?: AbortSignal;
+}
+
+/** Primes tried before giving up. Two in a row have never been seen to fail. */
+const MAX_ATTEMPTS = 12;
+
+/** Outputs between two reports of progress. */
+const CHUNK = 2 ** 16;
+
+/** Visits of one layer of outputs, and of all layers, before what is left goes to the elimination. */
+const MAX_VISITS = 2;
+const MAX_PASSES = 2;
+
+/** Classes left that are worth a second pass over all layers. */
+const LARGE_CORE = 512;
+
+/** Bytes that the writing of a certificate, and its check, will need at the peak: two 32-bit words a packed string. */
+export function certificateBytes({
+  hamiltonian,
+  range,
+}: Pick<SearchResult, 'hamiltonian' | 'range'>): number {
+  return 90e6 + 8 * 4 ** (hamiltonian.chain.cell * range);
+}
+
+/**
+ * The certificate of a search, as canonical text; docs/certificate.md describes it. The same result gives the same bytes.
+ *
+ * Gives way to other work of the program about every 50 milliseconds. Cost: about that of the search; memory: 8 bytes a packed
+ * candidate.
+ *
+ * @throws LimitError where the evidence would be too large or the strings do not fit; CancelledError when `signal` fires
+ */
+export async function certificateOf(
+  result: SearchResult,
+  { onProgress, signal }: CertificateOptions = {},
+): Promise<string> {
+  const steps = certifying(result);
+  let last = Date.now();
+  for (;;) {
+    if (signal?.aborted) throw new CancelledError('certificate');
+    const step = steps.next();
+    if (step.done) return step.value;
+    if (Date.now() - last < 50) continue;
+    onProgress?.(step.value);
+    await new Promise((resolve) => setTimeout(resolve, 0));
+    last = Date.now();
+  }
+}
+
+/** As `certificateOf`, in one go. */
+export function certificateNow(result: SearchResult): string {
+  const steps = certifying(result);
+  for (;;) {
+    const step = steps.next();
+    if (step.done) return step.value;
+  }
+}
+
+/** Yields the share of the work done. */
+function* certifying(result: SearchResult): Generator<number, string> {
+  const spins = result.hamiltonian.chain.cell * result.range;
+  if (spins > MAX_SPINS)
+    throw new LimitError(`certificate: ${spins} spins; arrays hold strings of up to ${MAX_SPINS}`);
+  let attempts = 0;
+  for (const p of primesBelow(result.primes[0]! + 1)) {
+    if (attempts++ === MAX_ATTEMPTS) break;
+    const evidence = yield* evidenceModulo(result, primeField(p));
+    if (evidence !== undefined) return documentText(result, evidence);
+  }
+  throw new VerificationError(
+    `certificate: no prime below ${PRIME_BOUND} proved the dimension ${result.charges.length}`,
+  );
+}
+
+/** Undefined when the prime is unlucky: the rank, or that of the charges' leading parts, is smaller than over the rationals. */
+function* evidenceModulo(result: SearchResult, field: Field): Generator<number, Evidence | undefined> {
+  const { hamiltonian, range, charges, candidates } = result;
+  const unit = 4 ** hamiltonian.chain.cell;
+  const layers = range + hamiltonian.range - 1;
+  const replay = new Replay(hamiltonian, range, field);
+  const sweeps: [number, number][] = [];
+  const wanted = candidates - charges.length;
+  for (let pass = 0; pass < MAX_PASSES; pass++) {
+    for (let cells = layers; cells >= 1; cells--)
+      for (let visit = 0; visit < MAX_VISITS; visit++) {
+        const before = replay.uses;
+        for (let from = unit ** (cells - 1); from < unit ** cells; from += CHUNK) {
+          replay.sweep(cells, from, Math.min(unit ** cells, from + CHUNK));
+          yield pass === 0 ? 0.8 * (1 - unit ** (cells - layers)) : 0.8;
+        }
+        if (replay.uses === before) break;
+        sweeps.push([cells, replay.uses - before]);
+      }
+    if (wanted - replay.uses < LARGE_CORE) break;
+  }
+  const { strings, classes } = replay.alive();
+  const { outputs, rows } = replay.core(strings);
+  const steps = independentRows(rows, classes, wanted - replay.uses, field);
+  for (;;) {
+    const step = steps.next();
+    if (!step.done) {
+      yield 0.8 + 0.2 * step.value;
+      continue;
+    }
+    if (replay.uses + step.value.length < wanted) return undefined;
+    return { prime: field.p, sweeps, pivots: step.value.map((i) => outputs[i]!) };
+  }
+}

@@ -1,0 +1,150 @@
+/**
+ * The evidence of an exhaustive search: which sweeps over which outputs leave which core. The same walk that a checker makes, by
+ * this library's own code; the rules of the walk are those of docs/certificate.md.
+ *
+ * Cost: a gather a swept output. Memory: 8 bytes a packed candidate.
+ */
+import { LimitError } from '../errors.ts';
+import type { Field } from '../linear/field.ts';
+import { WeightedForest } from '../linear/forest.ts';
+import type { SparseVector } from '../linear/sparse.ts';
+import type { Hamiltonian } from '../model/hamiltonian.ts';
+import { Neighbourhood, type WindowTable, windowTable } from '../search/windows.ts';
+
+/** Bits of the longest string that a row touches: a term sticks out on the left of the longest output. */
+const MAX_BITS = 32;
+
+export class Replay {
+  readonly #table: WindowTable;
+  readonly #forest: WeightedForest;
+  readonly #coefficients: Float64Array;
+  readonly #limit: number;
+  readonly #reach: number;
+  /** The row reduced last: representatives of classes and factors, none zero. */
+  readonly classes: number[] = [];
+  readonly factors: number[] = [];
+
+  /** @throws LimitError where strings do not fit the packed form */
+  constructor(
+    readonly h: Hamiltonian,
+    readonly range: number,
+    readonly field: Field,
+  ) {
+    this.#table = windowTable(h);
+    const { cellBits, values } = this.#table;
+    if (cellBits * (range + 2 * h.range - 2) > MAX_BITS)
+      throw new LimitError(
+        `certificate: range ${range} with cells of ${h.chain.cell} and an interaction of ${h.range} cells needs strings of more than ${MAX_BITS / 2} spins`,
+      );
+    this.#limit = 2 ** (cellBits * range);
+    this.#reach = h.range;
+    // "Nothing in the first cell, X in the second" is no representative: its place is the zero root's.
+    this.#forest = new WeightedForest(this.#limit - 1, 2 ** cellBits, field);
+    this.#coefficients = Float64Array.from(values, (v) => field.residue(v));
+  }
+
+  /** Equations used so far: the rank they prove. */
+  get uses(): number {
+    return this.#forest.uses;
+  }
+
+  /** Visits the outputs of `cells` cells from … to − 1, rising: uses those with one class or two left. */
+  sweep(cells: number, from: number, to: number): void {
+    const forest = this.#forest;
+    const { classes, factors } = this;
+    const cellMask = 2 ** this.#table.cellBits - 1;
+    for (let output = from; output < to; output++) {
+      if ((output & cellMask) === 0) continue;
+      this.reduce(output, cells);
+      if (classes.length === 1) forest.setZero(classes[0]!);
+      else if (classes.length === 2) forest.tie(classes[0]!, factors[0]!, classes[1]!, factors[1]!);
+    }
+  }
+
+  /** The row of an output, in classes that may be non-zero. */
+  reduce(output: number, cells: number): void {
+    const { cellBits, bits, start, image } = this.#table;
+    const { classes, factors } = this;
+    const cellMask = 2 ** cellBits - 1;
+    const mask = 2 ** bits - 1;
+    classes.length = 0;
+    factors.length = 0;
+    for (let at = 1 - this.#reach; at < cells; at++) {
+      // Inside, a term leaves both ends alone, and the parent is as long as the output.
+      if (at === 1 && cells > this.range) at = Math.max(1, cells - this.#reach);
+      const shifted = at < 0 ? (output << (-at * cellBits)) >>> 0 : output;
+      const shift = at < 0 ? 0 : at * cellBits;
+      const window = (shifted >>> shift) & mask;
+      for (let i = start[window]!; i < start[window + 1]!; i++) {
+        let parent = (shifted ^ ((image[i]! ^ window) << shift)) >>> 0;
+        while ((parent & cellMask) === 0) parent >>>= cellBits;
+        if (parent < this.#limit) this.#add(parent, i);
+      }
+    }
+    let kept = 0;
+    for (let i = 0; i < classes.length; i++)
+      if (factors[i] !== 0) {
+        classes[kept] = classes[i]!;
+        factors[kept++] = factors[i]!;
+      }
+    classes.length = kept;
+    factors.length = kept;
+  }
+
+  #add(parent: number, entry: number): void {
+    const forest = this.#forest;
+    if (forest.link[parent] === forest.zero) return;
+    const root = forest.root(parent);
+    if (root === forest.zero) return;
+    const { classes, factors, field } = this;
+    const term = field.multiply(this.#coefficients[this.#table.backward[entry]!]!, forest.rootWeight);
+    const at = classes.indexOf(root);
+    if (at < 0) {
+      classes.push(root);
+      factors.push(term);
+    } else factors[at] = (factors[at]! + term) % field.p;
+  }
+
+  /** The candidates that may be non-zero, and how many classes they form. */
+  alive(): { strings: number[]; classes: number } {
+    const forest = this.#forest;
+    const cellMask = 2 ** this.#table.cellBits - 1;
+    const strings: number[] = [];
+    let classes = 0;
+    for (let string = 1; string < this.#limit; string++) {
+      if (forest.link[string] === forest.zero || (string & cellMask) === 0) continue;
+      const root = forest.root(string);
+      if (root === forest.zero) continue;
+      strings.push(string);
+      if (root === string) classes++;
+    }
+    return { strings, classes };
+  }
+
+  /** The outputs whose rows may have a class left, with those rows: each output that a living string reaches. */
+  core(alive: readonly number[]): { outputs: number[]; rows: SparseVector[] } {
+    const near = new Neighbourhood(this.#table, this.range);
+    const outputs = new Set<number>();
+    for (const string of alive) {
+      near.visit(string, this.#cells(string));
+      for (let i = 0; i < near.count; i++) outputs.add(near.images[i]!);
+    }
+    const index = new Map<number, number>();
+    const kept: { output: number; row: SparseVector }[] = [];
+    for (const output of [...outputs].sort((a, b) => a - b)) {
+      this.reduce(output, this.#cells(output));
+      if (this.classes.length === 0) continue;
+      const entries = this.classes.map((c, i) => {
+        if (!index.has(c)) index.set(c, index.size);
+        return [index.get(c)!, this.factors[i]!] as const;
+      });
+      entries.sort((a, b) => a[0] - b[0]);
+      kept.push({ output, row: { columns: entries.map(([c]) => c), values: entries.map(([, v]) => v) } });
+    }
+    return { outputs: kept.map((k) => k.output), rows: kept.map((k) => k.row) };
+  }
+
+  #cells(string: number): number {
+    return Math.ceil((32 - Math.clz32(string)) / this.#table.cellBits);
+  }
+}
