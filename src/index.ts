@@ -60,7 +60,15 @@ export {
   readModelDocument,
 } from './model/schema.ts';
 export type { Site, Syntax } from './model/syntax.ts';
-export { CAUTIONS, printResult, type TextOptions } from './report/text.ts';
+export {
+  type GroupedDensity,
+  groupTerms,
+  type Symmetry,
+  symmetriesOf,
+  type TermGroup,
+} from './report/grouping.ts';
+export { printCharge, printDensity, printResult, type TextOptions } from './report/text.ts';
+export { CAUTIONS, verdictOf } from './report/verdict.ts';
 export { type BackgroundOptions, search } from './search/background.ts';
 export { type Estimate, estimate } from './search/estimate.ts';
 export type { Charge, SearchResult } from './search/result.ts';
