@@ -3,7 +3,7 @@ import { CancelledError, LimitError, VerificationError } from '../errors.ts';
 import { type Field, PRIME_BOUND, primeField, primesBelow } from '../linear/field.ts';
 import type { SearchResult } from '../search/result.ts';
 import { MAX_SPINS } from '../search/sweep.ts';
-import { independentRows } from './core.ts';
+import { independentRows, tooLarge } from './core.ts';
 import { documentText, type Evidence } from './document.ts';
 import { Replay } from './replay.ts';
 
@@ -22,6 +22,9 @@ const CHUNK = 2 ** 16;
 /** Visits of one layer of outputs, and of all layers, before what is left goes to the elimination. */
 const MAX_VISITS = 2;
 const MAX_PASSES = 2;
+
+/** Rows that may be left open at any time: each is a number in memory, and three rows to one are listed in the end. */
+const MAX_OPEN = 2 ** 23;
 
 /** Classes left that are worth a second pass over all layers. */
 const LARGE_CORE = 512;
@@ -92,22 +95,36 @@ function* evidenceModulo(result: SearchResult, field: Field): Generator<number, 
   const replay = new Replay(hamiltonian, range, field);
   const sweeps: [number, number][] = [];
   const wanted = candidates - charges.length;
+  /** By range of the outputs: rows that still tie three classes or more. */
+  const open = new Map<number, readonly number[]>();
+  let openCount = 0;
   for (let pass = 0; pass < MAX_PASSES; pass++) {
     for (let cells = layers; cells >= 1; cells--)
       for (let visit = 0; visit < MAX_VISITS; visit++) {
         const before = replay.uses;
-        for (let from = unit ** (cells - 1); from < unit ** cells; from += CHUNK) {
-          replay.sweep(cells, from, Math.min(unit ** cells, from + CHUNK));
-          yield pass === 0 ? 0.8 * (1 - unit ** (cells - layers)) : 0.8;
+        const known = open.get(cells);
+        const left: number[] = [];
+        const first = known === undefined ? unit ** (cells - 1) : 0;
+        const end = known === undefined ? unit ** cells : known.length;
+        for (let from = first; from < end; from += CHUNK) {
+          const to = Math.min(end, from + CHUNK);
+          const chunk =
+            known === undefined
+              ? replay.sweep(cells, from, to)
+              : replay.sweepAgain(cells, known.slice(from, to));
+          for (const output of chunk) left.push(output);
+          if (openCount + left.length > MAX_OPEN) throw tooLarge(MAX_OPEN);
+          yield pass > 0 || visit > 0 ? 0.8 : 0.8 * (1 - unit ** (cells - layers) * (1 - from / end));
         }
-        if (replay.uses === before) break;
-        sweeps.push([cells, replay.uses - before]);
+        openCount += left.length - (known?.length ?? 0);
+        open.set(cells, left);
+        if (replay.uses > before) sweeps.push([cells, replay.uses - before]);
+        if (replay.uses === before || left.length === 0) break;
       }
     if (wanted - replay.uses < LARGE_CORE) break;
   }
-  const { strings, classes } = replay.alive();
-  const { outputs, rows } = replay.core(strings);
-  const steps = independentRows(rows, classes, wanted - replay.uses, field);
+  const core = replay.core(open);
+  const steps = independentRows(core.rows, core.columns, wanted - replay.uses, field);
   for (;;) {
     const step = steps.next();
     if (!step.done) {
@@ -115,6 +132,6 @@ function* evidenceModulo(result: SearchResult, field: Field): Generator<number, 
       continue;
     }
     if (replay.uses + step.value.length < wanted) return undefined;
-    return { prime: field.p, sweeps, pivots: step.value.map((i) => outputs[i]!) };
+    return { prime: field.p, sweeps, pivots: step.value.map((i) => core.outputs[i]!) };
   }
 }

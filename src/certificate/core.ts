@@ -25,11 +25,7 @@ export function* independentRows(
   enough: number,
   field: Field,
 ): Generator<number, number[]> {
-  if (enough > MAX_ROWS)
-    throw new LimitError(
-      `certificate: the sweeps leave ${enough.toLocaleString('en')} equations that tie three or more unknowns; a certificate lists at most ${MAX_ROWS.toLocaleString('en')}. ` +
-        'Turning the spin axes so that the couplings become diagonal, or a smaller range, leaves fewer',
-    );
+  if (enough > MAX_ROWS) throw tooLarge(enough);
   const { p, multiply, inverse } = field;
   const usage = new Uint32Array(columns);
   for (const row of rows) for (const c of row.columns) usage[c]!++;
@@ -81,4 +77,11 @@ export function* independentRows(
     yield chosen.length / Math.max(1, enough);
   }
   return chosen;
+}
+
+export function tooLarge(rows: number): LimitError {
+  return new LimitError(
+    `certificate: the sweeps leave ${rows.toLocaleString('en')} equations or more that tie three unknowns each; a certificate lists at most ` +
+      `${MAX_ROWS.toLocaleString('en')}. A smaller range leaves fewer, and so do spin axes in which the couplings are diagonal`,
+  );
 }

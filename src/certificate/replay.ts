@@ -9,7 +9,7 @@ import type { Field } from '../linear/field.ts';
 import { WeightedForest } from '../linear/forest.ts';
 import type { SparseVector } from '../linear/sparse.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
-import { Neighbourhood, type WindowTable, windowTable } from '../search/windows.ts';
+import { type WindowTable, windowTable } from '../search/windows.ts';
 
 /** Bits of the longest string that a row touches: a term sticks out on the left of the longest output. */
 const MAX_BITS = 32;
@@ -48,17 +48,30 @@ export class Replay {
     return this.#forest.uses;
   }
 
-  /** Visits the outputs of `cells` cells from … to − 1, rising: uses those with one class or two left. */
-  sweep(cells: number, from: number, to: number): void {
-    const forest = this.#forest;
-    const { classes, factors } = this;
+  /** Visits the outputs of `cells` cells from … to − 1, rising: uses those with one class or two left. @returns those with more */
+  sweep(cells: number, from: number, to: number): number[] {
     const cellMask = 2 ** this.#table.cellBits - 1;
-    for (let output = from; output < to; output++) {
-      if ((output & cellMask) === 0) continue;
-      this.reduce(output, cells);
-      if (classes.length === 1) forest.setZero(classes[0]!);
-      else if (classes.length === 2) forest.tie(classes[0]!, factors[0]!, classes[1]!, factors[1]!);
-    }
+    const open: number[] = [];
+    for (let output = from; output < to; output++)
+      if ((output & cellMask) !== 0 && !this.#visit(output, cells)) open.push(output);
+    return open;
+  }
+
+  /**
+   * The same sweep once more. A row that was used, or had no class left, has none for good: only those left open are visited.
+   *
+   * @returns those that still are
+   */
+  sweepAgain(cells: number, open: readonly number[]): number[] {
+    return open.filter((output) => !this.#visit(output, cells));
+  }
+
+  #visit(output: number, cells: number): boolean {
+    const { classes, factors } = this;
+    this.reduce(output, cells);
+    if (classes.length === 1) this.#forest.setZero(classes[0]!);
+    else if (classes.length === 2) this.#forest.tie(classes[0]!, factors[0]!, classes[1]!, factors[1]!);
+    return classes.length <= 2;
   }
 
   /** The row of an output, in classes that may be non-zero. */
@@ -105,46 +118,30 @@ export class Replay {
     } else factors[at] = (factors[at]! + term) % field.p;
   }
 
-  /** The candidates that may be non-zero, and how many classes they form. */
-  alive(): { strings: number[]; classes: number } {
-    const forest = this.#forest;
-    const cellMask = 2 ** this.#table.cellBits - 1;
-    const strings: number[] = [];
-    let classes = 0;
-    for (let string = 1; string < this.#limit; string++) {
-      if (forest.link[string] === forest.zero || (string & cellMask) === 0) continue;
-      const root = forest.root(string);
-      if (root === forest.zero) continue;
-      strings.push(string);
-      if (root === string) classes++;
-    }
-    return { strings, classes };
-  }
-
-  /** The outputs whose rows may have a class left, with those rows: each output that a living string reaches. */
-  core(alive: readonly number[]): { outputs: number[]; rows: SparseVector[] } {
-    const near = new Neighbourhood(this.#table, this.range);
-    const outputs = new Set<number>();
-    for (const string of alive) {
-      near.visit(string, this.#cells(string));
-      for (let i = 0; i < near.count; i++) outputs.add(near.images[i]!);
-    }
+  /** The rows of outputs with a class left, in classes numbered from 0 on as they come up. */
+  core(layers: Iterable<readonly [cells: number, outputs: readonly number[]]>): Core {
     const index = new Map<number, number>();
-    const kept: { output: number; row: SparseVector }[] = [];
-    for (const output of [...outputs].sort((a, b) => a - b)) {
-      this.reduce(output, this.#cells(output));
-      if (this.classes.length === 0) continue;
-      const entries = this.classes.map((c, i) => {
-        if (!index.has(c)) index.set(c, index.size);
-        return [index.get(c)!, this.factors[i]!] as const;
-      });
-      entries.sort((a, b) => a[0] - b[0]);
-      kept.push({ output, row: { columns: entries.map(([c]) => c), values: entries.map(([, v]) => v) } });
-    }
-    return { outputs: kept.map((k) => k.output), rows: kept.map((k) => k.row) };
+    const outputs: number[] = [];
+    const rows: SparseVector[] = [];
+    for (const [cells, open] of layers)
+      for (const output of open) {
+        this.reduce(output, cells);
+        if (this.classes.length === 0) continue;
+        const entries = this.classes.map((c, i) => {
+          if (!index.has(c)) index.set(c, index.size);
+          return [index.get(c)!, this.factors[i]!] as const;
+        });
+        entries.sort((a, b) => a[0] - b[0]);
+        outputs.push(output);
+        rows.push({ columns: entries.map(([c]) => c), values: entries.map(([, v]) => v) });
+      }
+    return { outputs, rows, columns: index.size };
   }
+}
 
-  #cells(string: number): number {
-    return Math.ceil((32 - Math.clz32(string)) / this.#table.cellBits);
-  }
+/** What the sweeps leave: rows that tie three or more classes. */
+export interface Core {
+  readonly outputs: readonly number[];
+  readonly rows: readonly SparseVector[];
+  readonly columns: number;
 }
