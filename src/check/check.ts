@@ -43,8 +43,8 @@ export function* checking(text: string): Generator<number, Verdict> {
       throw new Malformed('not a certificate of conserved quantities');
     if (document.version !== 1) throw new Malformed('a version of the format other than 1');
     const kind = string(document.kind, 'kind');
-    if (!/^[ -~]{1,100}$/.test(string(document.tool, 'tool')))
-      throw new Malformed('tool is empty or too long');
+    if (!/^[A-Za-z0-9][A-Za-z0-9 .+-]{0,99}$/.test(string(document.tool, 'tool')))
+      throw new Malformed('tool is not a name and a version');
     const check = KINDS.get(kind);
     if (check === undefined) throw new Malformed('a kind that this checker does not know');
     const statement = yield* check(document);

@@ -60,7 +60,7 @@ export function* checkExhaustive(
   const reach = natural(model.range, 'range of the model', 1, MAX_RANGE);
   const terms = readTerms(model.terms, cell, reach, 'model');
   if (terms.length === 0) throw new Malformed('the model has no term');
-  if (Math.max(...terms.map((t) => t.range)) !== reach)
+  if (terms.reduce((most, t) => Math.max(most, t.range), 0) !== reach)
     throw new Rejected('the range of the model is not that of its terms');
 
   const claim = fields(document.claim, ['range', 'dimensions', 'rings', 'statement', 'assumes'], 'claim');

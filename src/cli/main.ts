@@ -1,12 +1,16 @@
 #!/usr/bin/env node
 /** The `holdfast` command: picks the subcommand, words errors, sets the exit status. */
 import { parseArgs } from 'node:util';
+import { VERSION } from '../certificate/version.ts';
 import { HoldfastError, InputError } from '../errors.ts';
 import { type Command, type CommandInput, Exit } from './command.ts';
+import { check } from './commands/check.ts';
+import { cite } from './commands/cite.ts';
 import { demo } from './commands/demo.ts';
+import { matrix } from './commands/matrix.ts';
 import { search } from './commands/search.ts';
 
-const COMMANDS: readonly Command[] = [search, demo];
+const COMMANDS: readonly Command[] = [search, check, cite, matrix, demo];
 
 const USAGE = `holdfast finds all local conserved quantities of a spin chain up to a range, exactly, or proves that there are none.
 
@@ -22,6 +26,10 @@ export async function main(argv: readonly string[]): Promise<number> {
   if (name === undefined || name === '--help' || name === '-h' || name === 'help') {
     process.stdout.write(USAGE);
     return name === undefined ? Exit.input : Exit.done;
+  }
+  if (name === '--version') {
+    process.stdout.write(`holdfast ${VERSION}\n`);
+    return Exit.done;
   }
   const command = COMMANDS.find((c) => c.name === name);
   const cancel = new AbortController();

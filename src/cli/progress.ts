@@ -26,3 +26,20 @@ export function progressLine({
     clear: () => note('\r\u001b[2K'),
   };
 }
+
+/** The same for work that knows only its share done. */
+export function shareLine(
+  { interactive, note }: Pick<CommandInput, 'interactive' | 'note'>,
+  what: string,
+): { readonly show: (done: number) => void; readonly clear: () => void } {
+  if (!interactive) return { show: () => {}, clear: () => {} };
+  const started = performance.now();
+  return {
+    show(done) {
+      const seconds = (performance.now() - started) / 1000;
+      const left = done > 0.01 ? `, about ${(seconds * (1 / done - 1)).toFixed(0)} s left` : '';
+      note(`\r\u001b[2K${what}: ${(100 * done).toFixed(0)} %${left}`);
+    },
+    clear: () => note('\r\u001b[2K'),
+  };
+}

@@ -1,13 +1,15 @@
 /** `holdfast search`: all charges up to a range. */
 import { textFromRational } from '../../algebra/rational.ts';
 import { textFromWord } from '../../algebra/word.ts';
+import { certificateOf } from '../../certificate/certificate.ts';
 import { InputError, show } from '../../errors.ts';
 import { printResult } from '../../report/text.ts';
 import { search as searchInBackground } from '../../search/background.ts';
 import type { SearchResult } from '../../search/result.ts';
 import { type Command, type CommandInput, Exit } from '../command.ts';
 import { MODEL_HELP, MODEL_OPTIONS, modelFromOptions } from '../model-options.ts';
-import { progressLine } from '../progress.ts';
+import { writeFileWhole } from '../output-file.ts';
+import { progressLine, shareLine } from '../progress.ts';
 
 export const search: Command = {
   name: 'search',
@@ -25,6 +27,7 @@ ${MODEL_HELP}
 Search:
   --range K             largest range, in cells
   --json                the result for machines, and nothing else, on standard output
+  --certificate FILE    writes the proof, for "holdfast check FILE"
   --memory GB           refuse to start above so many gigabytes (default: what is free)
 
 Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
@@ -32,6 +35,7 @@ Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
     ...MODEL_OPTIONS,
     range: { type: 'string' },
     json: { type: 'boolean' },
+    certificate: { type: 'string' },
     memory: { type: 'string' },
   },
   async run(input) {
@@ -45,6 +49,14 @@ Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
       onProgress: line.show,
       ...(memory === undefined ? {} : { memory }),
     }).finally(line.clear);
+    const file = input.values['certificate'] as string | undefined;
+    if (file !== undefined) {
+      const writing = shareLine(input, 'writing the certificate');
+      const text = await certificateOf(result, { signal: input.signal, onProgress: writing.show }).finally(
+        writing.clear,
+      );
+      await writeFileWhole('--certificate', file, [text], input.signal);
+    }
     input.out(
       input.values['json'] === true
         ? `${JSON.stringify(resultToJson(result), null, 2)}\n`
