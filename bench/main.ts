@@ -5,10 +5,10 @@ import { machine } from './measure.ts';
 import { MODELS } from './models.ts';
 import type { BenchOptions } from './options.ts';
 import { benchSearch } from './search.ts';
-import { markdown, type Table, writeTables } from './table.ts';
+import { markdown, writeTable } from './table.ts';
 
 const BENCHES: Readonly<
-  Record<string, { readonly what: string; run(options: BenchOptions): Promise<Table[]> }>
+  Record<string, { readonly what: string; run(options: BenchOptions): Promise<void> }>
 > = {
   search: { what: 'the exhaustive search, beside one compiled pass over all non-zeros', run: benchSearch },
   external: { what: 'the same matrices through general-purpose exact libraries', run: benchExternal },
@@ -57,6 +57,8 @@ async function main(): Promise<number> {
     return values.help ? 0 : 2;
   }
   const [from, to] = [Number(range?.[1]), Number(range?.[2] ?? range?.[1])];
+  const heading = `Measured on ${new Date().toISOString().slice(0, 10)}: ${machine()}.`;
+  let failures = 0;
   const options: BenchOptions = {
     smoke: values.smoke,
     large: values.large,
@@ -65,15 +67,20 @@ async function main(): Promise<number> {
     samples: Math.floor(samples),
     limit,
     progress: (text) => process.stderr.write(`  ${text}\n`),
+    table(table) {
+      console.log(`${markdown(table)}\n`);
+      if (values.write) writeTable(table, heading);
+    },
+    failure(text) {
+      failures++;
+      process.stderr.write(`FAILED ${text}\n`);
+    },
   };
-  const heading = `Measured on ${new Date().toISOString().slice(0, 10)}: ${machine()}.`;
   console.log(`${heading}\n`);
   for (const name of positionals.length > 0 ? positionals : Object.keys(BENCHES)) {
-    const tables = await BENCHES[name]!.run(options);
-    for (const table of tables) console.log(`${markdown(table)}\n`);
-    if (values.write) writeTables(tables, heading);
+    await BENCHES[name]!.run(options);
   }
-  return 0;
+  return failures === 0 ? 0 : 1;
 }
 
 process.exitCode = await main();

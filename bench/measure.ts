@@ -21,6 +21,7 @@ export function spreadOf(values: readonly number[]): Spread {
 
 function medianOf(values: readonly number[]): number {
   const sorted = [...values].sort((a, b) => a - b);
+  if (sorted.length === 0) return Number.NaN;
   const middle = sorted.length >> 1;
   return sorted.length % 2 === 1 ? sorted[middle]! : (sorted[middle - 1]! + sorted[middle]!) / 2;
 }

@@ -1,3 +1,5 @@
+import type { Table } from './table.ts';
+
 export interface BenchOptions {
   /** Small sizes, one sample: does it run at all? */
   readonly smoke: boolean;
@@ -10,4 +12,8 @@ export interface BenchOptions {
   /** Limit of one point of a library that is compared against. */
   readonly limit: number;
   progress(text: string): void;
+  /** A table is printed as soon as it is done. */
+  table(table: Table): void;
+  /** A run that went wrong: reported at once, and in the exit status in the end. */
+  failure(text: string): void;
 }

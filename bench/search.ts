@@ -1,5 +1,5 @@
 /** The search over a grid of ranges, each sample a fresh process, with the compiled pass beside it. */
-import { buildPass, runPass } from './limit/limit.ts';
+import { buildPass, PASS_GRAIN, runPass } from './limit/limit.ts';
 import { clockGrain, grainWarning, run, type Spread, spreadOf } from './measure.ts';
 import {
   type BenchModel,
@@ -11,26 +11,23 @@ import {
 } from './models.ts';
 import type { BenchOptions } from './options.ts';
 import type { PointAnswer, PointRequest } from './point.ts';
-import { megabytes, ratio, seconds, type Table } from './table.ts';
+import { megabytes, ratio, seconds } from './table.ts';
 
 export interface Point extends Spread {
-  /** Median of the processor time. */
-  readonly processor: number;
   readonly answer: PointAnswer;
 }
 
 /** As many samples as asked for while they stay cheap; long points get fewer. */
 const BUDGET_SECONDS = 30;
-/** Wall time over processor time from which on a point is marked: one thread that was not left alone. */
-const BUSY = 1.2;
 
-/**
- * @throws Error when a run fails or its answer is not the known one: a wrong answer has no speed
- */
-export async function measurePoint(model: BenchModel, range: number, samples: number): Promise<Point> {
+/** Undefined when a run fails or its answer is not the known one, which is reported: a wrong answer has no speed. */
+export async function measurePoint(
+  model: BenchModel,
+  range: number,
+  { samples, failure }: BenchOptions,
+): Promise<Point | undefined> {
   const request: PointRequest = { formula: model.formula, cell: model.cell, range };
   const times: number[] = [];
-  const processor: number[] = [];
   let answer: PointAnswer | undefined;
   let spent = 0;
   while (times.length < samples && (times.length < 1 || spent < BUDGET_SECONDS)) {
@@ -45,18 +42,17 @@ export async function measurePoint(model: BenchModel, range: number, samples: nu
       ],
       { seconds: 1800 },
     );
-    if (status !== 0) throw new Error(`${model.name}, range ${range}: status ${status}\n${stderr}`);
+    if (status !== 0) return void failure(`${model.name}, range ${range}: status ${status}\n${stderr}`);
     const one = JSON.parse(stdout) as PointAnswer;
     if (one.dimension !== model.dimension(range))
-      throw new Error(
+      return void failure(
         `${model.name}, range ${range}: ${one.dimension} charges, ${model.dimension(range)} are known`,
       );
     if (answer === undefined || one.peak > answer.peak) answer = one;
     times.push(one.seconds);
-    processor.push(one.processorSeconds);
     spent += one.seconds;
   }
-  return { ...spreadOf(times), processor: spreadOf(processor).median, answer: answer! };
+  return { ...spreadOf(times), answer: answer! };
 }
 
 /** Each part of a target with a mark; what was not measured is left out. */
@@ -78,10 +74,9 @@ function rangesOf(model: BenchModel, { smoke, large }: BenchOptions): readonly n
   return large ? [...model.usual, ...model.large] : model.usual;
 }
 
-export async function benchSearch(options: BenchOptions): Promise<Table[]> {
+export async function benchSearch(options: BenchOptions): Promise<void> {
   const pass = await buildPass();
   const grain = clockGrain();
-  const tables: Table[] = [];
   for (const model of MODELS) {
     if (options.models !== undefined && !options.models.includes(model.name)) continue;
     const h = hamiltonianOfBench(model);
@@ -91,30 +86,29 @@ export async function benchSearch(options: BenchOptions): Promise<Table[]> {
     if ('missing' in pass) notes.add(pass.missing);
     let previous: { readonly range: number; readonly median: number } | undefined;
     for (const range of options.ranges ?? rangesOf(model, options)) {
-      const point = await measurePoint(model, range, options.samples);
+      const point = await measurePoint(model, range, options);
+      if (point === undefined) break;
       const entries = nonZeros(h, range);
       let passSeconds = Number.NaN;
       if ('program' in pass) {
         const passes = [];
         for (let i = 0; i < Math.min(3, options.samples); i++) {
           const one = await runPass(pass.program, h, range);
-          if (one === undefined) throw new Error(`${model.name}, range ${range}: the compiled pass failed`);
-          if (one.nonzeros !== entries)
-            throw new Error(
-              `${model.name}, range ${range}: the compiled pass met ${one.nonzeros} non-zeros, not ${entries}`,
+          if (one?.nonzeros === entries) passes.push(one.seconds);
+          else
+            options.failure(
+              `${model.name}, range ${range}: the compiled pass met ${one?.nonzeros} non-zeros, not ${entries}`,
             );
-          passes.push(one.seconds);
         }
         passSeconds = spreadOf(passes).median;
       }
-      for (const time of [point.median, passSeconds]) {
-        const warning = grainWarning(time, grain);
+      for (const [time, step] of [
+        [point.median, grain],
+        [passSeconds, PASS_GRAIN],
+      ] as const) {
+        const warning = grainWarning(time, step);
         if (warning !== undefined) notes.add(`Range ${range}: ${warning}.`);
       }
-      if (point.median > BUSY * point.processor)
-        notes.add(
-          `Range ${range}: the search waited for the processor (${seconds(point.processor)} of work); the machine was busy.`,
-        );
       const target = model.targets[range];
       const peak = point.answer.peak;
       const growth = previous?.range === range - 1 ? point.median / previous.median : Number.NaN;
@@ -138,7 +132,8 @@ export async function benchSearch(options: BenchOptions): Promise<Table[]> {
       before.push(point.answer.before);
       options.progress(`${model.name}: range ${range} in ${seconds(point.median)}`);
     }
-    tables.push({
+    if (rows.length === 0) continue;
+    options.table({
       name: `search-${model.name}`,
       title: `${model.title}: \`${model.formula}\``,
       columns: [
@@ -162,5 +157,4 @@ export async function benchSearch(options: BenchOptions): Promise<Table[]> {
       ],
     });
   }
-  return tables;
 }

@@ -30,22 +30,21 @@ export function markdown({ title, columns, rows, notes }: Table): string {
 const DOCUMENT = new URL('../docs/performance.md', import.meta.url).pathname;
 
 /**
- * Puts tables where the document has their marks, `<!-- table NAME -->` to `<!-- end NAME -->`; those without marks go to the end.
+ * Puts a table where the document has its marks, `<!-- table NAME -->` to `<!-- end NAME -->`; without marks it goes to the end.
  * What stands between marks is never written by hand.
  */
-export function writeTables(tables: readonly Table[], heading: string): void {
-  let text = existsSync(DOCUMENT) ? readFileSync(DOCUMENT, 'utf8') : '# Performance\n';
-  for (const table of tables) {
-    const begin = `<!-- table ${table.name} -->`;
-    const end = `<!-- end ${table.name} -->`;
-    const block = `${begin}\n\n${markdown(table)}\n\n${heading}\n\n${end}`;
-    const [from, to] = [text.indexOf(begin), text.indexOf(end)];
-    text =
-      from >= 0 && to > from
-        ? text.slice(0, from) + block + text.slice(to + end.length)
-        : `${text.trimEnd()}\n\n${block}\n`;
-  }
-  writeFileSync(DOCUMENT, text);
+export function writeTable(table: Table, heading: string): void {
+  const text = existsSync(DOCUMENT) ? readFileSync(DOCUMENT, 'utf8') : '# Performance\n';
+  const begin = `<!-- table ${table.name} -->`;
+  const end = `<!-- end ${table.name} -->`;
+  const block = `${begin}\n\n${markdown(table)}\n\n${heading}\n\n${end}`;
+  const [from, to] = [text.indexOf(begin), text.indexOf(end)];
+  writeFileSync(
+    DOCUMENT,
+    from >= 0 && to > from
+      ? text.slice(0, from) + block + text.slice(to + end.length)
+      : `${text.trimEnd()}\n\n${block}\n`,
+  );
 }
 
 export function seconds(value: number): string {

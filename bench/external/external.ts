@@ -3,7 +3,7 @@ import { textFromWord } from '../../src/algebra/word.ts';
 import { type BenchModel, hamiltonianOfBench, MODELS } from '../models.ts';
 import type { BenchOptions } from '../options.ts';
 import { measurePoint } from '../search.ts';
-import { ratio, seconds, type Table } from '../table.ts';
+import { ratio, seconds } from '../table.ts';
 import { findLibraries, type Limits } from './libraries.ts';
 import { type PlainTerm, plainMatrix } from './matrix.ts';
 
@@ -13,18 +13,18 @@ const USUAL_RANGES = [5, 6, 7, 8, 9];
 const PRIME = 67_108_859;
 const GIGABYTES = 3;
 
-export async function benchExternal(options: BenchOptions): Promise<Table[]> {
+export async function benchExternal(options: BenchOptions): Promise<void> {
   const libraries = await findLibraries();
   const wanted = options.models ?? (options.smoke ? USUAL_MODELS.slice(0, 1) : USUAL_MODELS);
   const limits: Limits = { seconds: options.limit, gigabytes: GIGABYTES, prime: PRIME };
-  const tables: Table[] = [];
   for (const model of MODELS.filter((m) => wanted.includes(m.name))) {
     const rows: string[][] = [];
     const given = new Set<string>();
     for (const range of options.ranges ?? (options.smoke ? [5] : USUAL_RANGES)) {
       const matrix = plainMatrix(plainTerms(model), model.cell, range);
       const expected = matrix.columns - model.dimension(range);
-      const search = await measurePoint(model, range, options.samples);
+      const search = await measurePoint(model, range, options);
+      if (search === undefined) break;
       const row = [
         `${range}`,
         `${matrix.rows} × ${matrix.columns}`,
@@ -45,7 +45,7 @@ export async function benchExternal(options: BenchOptions): Promise<Table[]> {
           library.bytes(matrix) > GIGABYTES * 1e9 ? { failed: 'memory' } : await library.rank(matrix, limits);
         if ('rank' in answer) {
           if (answer.rank !== expected)
-            throw new Error(
+            options.failure(
               `${model.name}, range ${range}: ${library.name} finds rank ${answer.rank}, not ${expected}`,
             );
           row.push(`${seconds(answer.seconds)}, ×${ratio(answer.seconds / search.median)}`);
@@ -66,7 +66,8 @@ export async function benchExternal(options: BenchOptions): Promise<Table[]> {
       }
       rows.push(row);
     }
-    tables.push({
+    if (rows.length === 0) continue;
+    options.table({
       name: `external-${model.name}`,
       title: `${model.title}: \`${model.formula}\`, rank by general-purpose libraries`,
       columns: [
@@ -88,7 +89,6 @@ export async function benchExternal(options: BenchOptions): Promise<Table[]> {
       ],
     });
   }
-  return tables;
 }
 
 function plainTerms(model: BenchModel): PlainTerm[] {

@@ -6,7 +6,11 @@ import { textFromWord } from '../../src/algebra/word.ts';
 import type { Hamiltonian } from '../../src/model/hamiltonian.ts';
 import { run } from '../measure.ts';
 
+/** The step of its clock, in seconds. */
+export const PASS_GRAIN = 1e-6;
+
 export interface Pass {
+  /** Of the processor. */
   readonly seconds: number;
   readonly nonzeros: number;
   readonly checksum: string;
