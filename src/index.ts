@@ -60,6 +60,7 @@ export {
   readModelDocument,
 } from './model/schema.ts';
 export type { Site, Syntax } from './model/syntax.ts';
+export { citation } from './report/citation.ts';
 export {
   type GroupedDensity,
   groupTerms,
@@ -67,6 +68,12 @@ export {
   symmetriesOf,
   type TermGroup,
 } from './report/grouping.ts';
+export { resultToJson } from './report/json.ts';
+export { latexDensity, latexEquation, latexResult } from './report/latex.ts';
+export { mathmlEquation } from './report/mathml.ts';
+export { type PageOptions, reportPage } from './report/page.ts';
+export { growthPicture, legendPicture, pictureOfCharge, pictureOfResult } from './report/picture.ts';
+export { type Story, type StoryLayer, type StoryStep, storyOf, tellLayer, tellStep } from './report/story.ts';
 export { printCharge, printDensity, printResult, type TextOptions } from './report/text.ts';
 export { CAUTIONS, verdictOf } from './report/verdict.ts';
 export { type BackgroundOptions, search } from './search/background.ts';

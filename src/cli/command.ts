@@ -21,6 +21,8 @@ export interface CommandInput {
   note(text: string): void;
   /** A progress line may be drawn: stderr is a terminal. */
   readonly interactive: boolean;
+  /** Characters a line of stdout. */
+  readonly width: number;
   /** Stdout is a terminal, and NO_COLOR is not set. */
   readonly colour: boolean;
   /** Fires on the first interrupt. */

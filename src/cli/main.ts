@@ -83,6 +83,7 @@ function inputOf(command: Command, args: readonly string[], signal: AbortSignal)
     out: (text) => void process.stdout.write(text),
     note: (text) => void process.stderr.write(text),
     interactive: process.stderr.isTTY === true,
+    width: Math.min(140, Math.max(60, process.stdout.columns ?? 100)),
     colour: process.stdout.isTTY === true && !process.env['NO_COLOR'],
     signal,
   };

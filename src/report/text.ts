@@ -1,9 +1,9 @@
 /** Results as text for a terminal. Densities are printed so that the formula reader takes them back. */
 import type { Operator } from '../algebra/operator.ts';
-import { textFromRational } from '../algebra/rational.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
 import type { Charge, SearchResult } from '../search/result.ts';
-import { type GroupedDensity, groupTerms, type TermGroup, wordText } from './grouping.ts';
+import { linesOf, tokensOf, tokenText } from './expression.ts';
+import { type GroupedDensity, groupTerms, type TermGroup } from './grouping.ts';
 import { addedByRange, CAUTIONS, expansionText, grouped, strings, validityOf, verdictOf } from './verdict.ts';
 
 export interface TextOptions {
@@ -24,7 +24,7 @@ export function printResult(result: SearchResult, options: TextOptions = {}): st
   const { width = WIDTH, colour = false } = options;
   const style = (code: number, text: string) => (colour ? `\u001b[${code}m${text}\u001b[0m` : text);
   const prose = (line: string, code?: number) =>
-    wrap(line.split(' '), width).map((l) => (code === undefined ? l : style(code, l)));
+    wrap(line, width).map((l) => (code === undefined ? l : style(code, l)));
   const paragraphs = [prose(verdictOf(result), 1).join('\n')];
   result.charges.forEach((charge, i) => {
     const [head, ...body] = printCharge(charge, result.hamiltonian, options).split('\n');
@@ -54,15 +54,16 @@ export function printCharge(
 ): string {
   const { shown, rest } = foldGroups(groupTerms(h, density), fold);
   const head = `range ${range}${parity === null ? '' : `, ${parity}`}, ${strings(density.size)}`;
-  const lines = wrap(['Σ', ...pieces(h, shown)], width - INDENT.length, '  ');
-  if (rest.length > 0) lines.push(...wrap(restText(rest).split(' '), width - INDENT.length, '  '));
+  const room = width - INDENT.length;
+  const lines = densityLines(h, shown, room - 2).map((line, i) => `${i === 0 ? 'Σ' : ' '} ${line}`);
+  if (rest.length > 0)
+    lines.push(...wrap(restText(rest), room - 2).map((line, i) => (i === 0 ? line : `  ${line}`)));
   return [head, ...lines].join('\n');
 }
 
 /** A density as papers print it, in full, in one line: `1/2 (XX + YY) + 3 Z`. `parseDensity` reads it back. */
 export function printDensity(h: Hamiltonian, density: Operator): string {
-  const groups = groupTerms(h, density);
-  return groups.groups.length === 0 ? '0' : pieces(h, groups).join(' ');
+  return density.isZero() ? '0' : densityLines(h, groupTerms(h, density), Number.POSITIVE_INFINITY).join('');
 }
 
 /** The first groups with at most `fold` strings, but at least one group, and the others. */
@@ -87,49 +88,23 @@ export function restText(rest: readonly TermGroup[]): string {
   return `… and ${strings(total)} more, by pattern (* a letter, . the identity): ${list.join(', ')}`;
 }
 
-/** Words and signs between which a line may be broken. */
-function pieces({ chain }: Hamiltonian, { common, groups }: GroupedDensity): string[] {
-  const outer = common.numerator === 1n && common.denominator === 1n ? '' : textFromRational(common);
-  const single = groups.length === 1;
-  const parts = groups.flatMap(({ factor, terms }, i) => {
-    const negative = factor < 0n;
-    // A single group takes the common factor for its own, so there are never two brackets around it.
-    const size = single && outer !== '' ? outer : `${negative ? -factor : factor}`;
-    const sign = i > 0 ? [negative ? '-' : '+'] : [];
-    const minus = i === 0 && negative ? '-' : '';
-    const number = size === '1' ? (terms.length > 1 && minus !== '' ? '1 ' : '') : `${size} `;
-    const words = terms.map(
-      (t, at) => `${at === 0 ? '' : t.sign < 0 ? '- ' : '+ '}${wordText(chain, t.word)}`,
-    );
-    if (terms.length === 1) return [...sign, `${minus}${number}${words[0]}`];
-    const open = `${minus}${number}(`;
-    // A positive group of factor 1 needs no bracket.
-    if (open === '(' && (i === 0 || !negative)) return [...sign, ...words.flatMap((w) => w.split(' '))];
-    return [
-      ...sign,
-      `${open}${words[0]}`,
-      ...words.slice(1, -1).flatMap((w) => w.split(' ')),
-      ...`${words.at(-1)!})`.split(' '),
-    ];
-  });
-  if (outer === '' || single) return parts;
-  return [`${outer} (${parts[0]}`, ...parts.slice(1, -1), parts.length > 1 ? `${parts.at(-1)!})` : ''].filter(
-    (p) => p !== '',
+function densityLines({ chain }: Hamiltonian, density: GroupedDensity, width: number): string[] {
+  return linesOf(chain, tokensOf(density), width).map((line) =>
+    line
+      .map((token) => tokenText(chain, token))
+      .join('')
+      .trim(),
   );
 }
 
-/** Greedy lines of words; an operator begins a line rather than ending one. */
-function wrap(words: readonly string[], width: number, indent = ''): string[] {
+/** Greedy lines of a sentence. */
+function wrap(sentence: string, width: number): string[] {
   const lines: string[] = [];
-  let line = '';
-  for (let i = 0; i < words.length; i++) {
-    const operator = (words[i] === '+' || words[i] === '-') && i + 1 < words.length;
-    const word = operator ? `${words[i]} ${words[++i]}` : words[i]!;
-    if (line !== '' && line.length + 1 + word.length > width) {
-      lines.push(line);
-      line = `${indent}${word}`;
-    } else line = line === '' ? word : `${line} ${word}`;
+  for (const word of sentence.split(' ')) {
+    const last = lines.at(-1);
+    if (last !== undefined && last.length + 1 + word.length <= width)
+      lines[lines.length - 1] = `${last} ${word}`;
+    else lines.push(word);
   }
-  if (line !== '') lines.push(line);
   return lines;
 }

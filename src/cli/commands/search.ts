@@ -1,8 +1,11 @@
 /** `holdfast search`: all charges up to a range. */
-import { textFromRational } from '../../algebra/rational.ts';
-import { textFromWord } from '../../algebra/word.ts';
 import { certificateOf } from '../../certificate/certificate.ts';
-import { InputError, show } from '../../errors.ts';
+import { checkNow } from '../../check/check.ts';
+import { InputError, LimitError, show } from '../../errors.ts';
+import { resultToJson } from '../../report/json.ts';
+import { latexResult } from '../../report/latex.ts';
+import { type PageOptions, reportPage } from '../../report/page.ts';
+import { pictureOfResult } from '../../report/picture.ts';
 import { printResult } from '../../report/text.ts';
 import { search as searchInBackground } from '../../search/background.ts';
 import type { SearchResult } from '../../search/result.ts';
@@ -21,14 +24,22 @@ Finds every charge of range up to K cells, or proves that there is none, on the 
   holdfast search "XX + YY + 3 X" --range 6
   holdfast search "Jx XX + Jy YY" --set Jx=1 --set Jy=2/3 --range 5
   holdfast search "XIXI + YIYI + IXIX + IYIY + U ZZ" --cell 2 --set U=4 --range 3 --json
+  holdfast search "ZZ + X + 1/2 Z" --range 4 --report chain.html --certificate chain.json
+  holdfast search "XX + YY + ZZ" --range 5 --latex > heisenberg.tex
 
 ${MODEL_HELP}
 
 Search:
   --range K             largest range, in cells
-  --json                the result for machines, and nothing else, on standard output
   --certificate FILE    writes the proof, for "holdfast check FILE"
   --memory GB           refuse to start above so many gigabytes (default: what is free)
+
+Output:
+  --unfold              print every string; else long charges are folded, with the count of the rest
+  --json                the result for machines, every string, and nothing else, on standard output
+  --latex               a LaTeX document on standard output instead
+  --report FILE         an HTML page with verdict, charges typeset and drawn, proof and certificate
+  --picture FILE        the charges drawn, as SVG
 
 Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
   options: {
@@ -37,10 +48,16 @@ Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
     json: { type: 'boolean' },
     certificate: { type: 'string' },
     memory: { type: 'string' },
+    unfold: { type: 'boolean' },
+    latex: { type: 'boolean' },
+    report: { type: 'string' },
+    picture: { type: 'string' },
   },
   async run(input) {
     const range = rangeOption(input);
     const memory = gigabytesOption(input);
+    if (input.values['json'] === true && input.values['latex'] === true)
+      throw new InputError('command line', '--json or --latex', 'both');
     const model = await modelFromOptions(input);
     const line = progressLine(input);
     const result = await searchInBackground(model, {
@@ -49,22 +66,51 @@ Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
       onProgress: line.show,
       ...(memory === undefined ? {} : { memory }),
     }).finally(line.clear);
-    const file = input.values['certificate'] as string | undefined;
-    if (file !== undefined) {
-      const writing = shareLine(input, 'writing the certificate');
-      const text = await certificateOf(result, { signal: input.signal, onProgress: writing.show }).finally(
-        writing.clear,
-      );
-      await writeFileWhole('--certificate', file, [text], input.signal);
+    const { certificate, report, picture } = input.values as Readonly<Record<string, string | undefined>>;
+    const proof =
+      certificate === undefined && report === undefined ? undefined : await proofOf(result, input);
+    if (certificate !== undefined) {
+      if (typeof proof !== 'string') throw proof;
+      await writeFileWhole('--certificate', certificate, [proof], input.signal);
     }
-    input.out(
-      input.values['json'] === true
-        ? `${JSON.stringify(resultToJson(result), null, 2)}\n`
-        : printResult(result, { colour: input.colour }),
-    );
+    if (report !== undefined)
+      await writeFileWhole('--report', report, [reportPage(result, carried(proof))], input.signal);
+    if (picture !== undefined)
+      await writeFileWhole('--picture', picture, [pictureOfResult(result)], input.signal);
+    input.out(printed(result, input));
     return Exit.done;
   },
 };
+
+/** The certificate, or why it would be too large. */
+async function proofOf(result: SearchResult, input: CommandInput): Promise<string | LimitError> {
+  const line = shareLine(input, 'writing the certificate');
+  try {
+    return await certificateOf(result, { signal: input.signal, onProgress: line.show });
+  } catch (error) {
+    if (error instanceof LimitError) return error;
+    throw error;
+  } finally {
+    line.clear();
+  }
+}
+
+/** A report carries only a certificate that the checker accepts. */
+function carried(proof: string | LimitError | undefined): PageOptions {
+  if (typeof proof !== 'string') return {};
+  const verdict = checkNow(proof);
+  return verdict.status === 'accepted' ? { certificate: { id: verdict.id, text: proof } } : {};
+}
+
+function printed(result: SearchResult, { values, colour, width }: CommandInput): string {
+  if (values['json'] === true) return `${JSON.stringify(resultToJson(result), null, 2)}\n`;
+  if (values['latex'] === true) return latexResult(result);
+  return printResult(result, {
+    colour,
+    width,
+    ...(values['unfold'] === true ? { fold: Number.POSITIVE_INFINITY } : {}),
+  });
+}
 
 export function rangeOption({ values }: Pick<CommandInput, 'values'>): number {
   const text = values['range'];
@@ -79,28 +125,4 @@ function gigabytesOption({ values }: Pick<CommandInput, 'values'>): number | und
   if (typeof text !== 'string' || !/^\d{1,6}(\.\d+)?$/.test(text) || Number(text) === 0)
     throw new InputError('--memory', 'gigabytes, a positive number', show(text));
   return Number(text) * 1e9;
-}
-
-/** The JSON contract of `--json`: coefficients as `p/q`, words from the first spin of the first cell on. */
-export function resultToJson(result: SearchResult): object {
-  const { hamiltonian, charges, dimensionByRange, range } = result;
-  const { chain, density } = hamiltonian;
-  const terms = (operator: SearchResult['charges'][number]['density']) =>
-    [...operator.terms()].map(([word, c]) => ({
-      coefficient: textFromRational(c),
-      word: textFromWord(word, chain.range(word) * chain.cell),
-    }));
-  return {
-    range,
-    cell: chain.cell,
-    hamiltonian: { range: hamiltonian.range, reflection: hamiltonian.reflection, terms: terms(density) },
-    dimension: dimensionByRange[range - 1],
-    dimensionByRange,
-    charges: charges.map((q) => ({ range: q.range, parity: q.parity, terms: terms(q.density) })),
-    expansionOfH: result.expansionOfH?.map(textFromRational) ?? null,
-    validRings: { minimumCells: result.minimumCells },
-    primes: result.primes,
-    candidates: result.candidates,
-    milliseconds: Math.round(result.milliseconds),
-  };
 }
