@@ -78,6 +78,7 @@ export { printCharge, printDensity, printResult, type TextOptions } from './repo
 export { CAUTIONS, verdictOf } from './report/verdict.ts';
 export { type BackgroundOptions, search } from './search/background.ts';
 export { type Estimate, estimate } from './search/estimate.ts';
+export { EquationMatrix, type MatrixSize } from './search/matrix.ts';
 export type { Charge, SearchResult } from './search/result.ts';
 export { candidateCount, leadingWord, type SearchOptions, searchNow } from './search/search.ts';
 export type { OnProgress, Progress } from './search/sweep.ts';

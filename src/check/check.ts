@@ -2,8 +2,8 @@
  * The trusted checker: decides from a certificate alone whether its claim is proved. It never searches, shares no code with the
  * search, and imports nothing from outside this folder. The rules are those of docs/certificate.md; C1, E2, … are its step numbers.
  */
-import { fields, Malformed, parseCanonical, Rejected, string, type Value } from './document.ts';
-import { checkExhaustive, KIND } from './exhaustive.ts';
+import { fields, Malformed, parseCanonical, Rejected, string } from './document.ts';
+import { checkExhaustive, KIND, type Parts } from './exhaustive.ts';
 import { sha256 } from './sha256.ts';
 
 export type Verdict =
@@ -25,10 +25,9 @@ export interface CheckOptions {
 }
 
 /** The kinds of evidence, each a file of this folder and a section of the document. */
-const KINDS: ReadonlyMap<
-  string,
-  (document: Readonly<Record<'model' | 'claim' | 'charges' | 'evidence', Value>>) => Generator<number, string>
-> = new Map([[KIND, checkExhaustive]]);
+const KINDS: ReadonlyMap<string, (parts: Parts) => Generator<number, string>> = new Map([
+  [KIND, checkExhaustive],
+]);
 
 /** The check, step by step: yields the share of the work done. Never throws for a bad certificate, whatever is in it. */
 export function* checking(text: string): Generator<number, Verdict> {

@@ -1,6 +1,6 @@
 /**
  * Certificates of the kind `exhaustive`: all charges of range ≤ k on a chain of cells. Numbers such as E2 are those of
- * docs/certificate.md, section "Kind exhaustive", which states why acceptance implies the claim.
+ * docs/certificate.md, whose section 5 says why acceptance implies the claim.
  */
 import { Hamiltonian, lcm, readTerms, readWord, type Term } from './chain.ts';
 import { fields, list, Malformed, natural, Rejected, string, type Value } from './document.ts';
@@ -20,6 +20,7 @@ const MAX_CELL = 8;
 const MAX_RANGE = 16;
 const MAX_SPINS = 13;
 const MAX_SWEEPS = 128;
+const MAX_VISITS = 2 ** 31;
 const MAX_CHARGES = 2 ** 16;
 
 export const KIND = 'exhaustive';
@@ -51,80 +52,31 @@ interface Charge {
   readonly terms: readonly Term[];
 }
 
+/** The parts of a certificate that depend on its kind. */
+export type Parts = Readonly<Record<'model' | 'claim' | 'charges' | 'evidence', Value>>;
+
 /** Yields the share of the work done, 0 … 1; returns the statement that is proved. */
-export function* checkExhaustive(
-  document: Readonly<Record<'model' | 'claim' | 'charges' | 'evidence', Value>>,
-): Generator<number, string> {
-  const model = fields(document.model, ['cell', 'range', 'terms'], 'model');
-  const cell = natural(model.cell, 'cell', 1, MAX_CELL);
-  const reach = natural(model.range, 'range of the model', 1, MAX_RANGE);
-  const terms = readTerms(model.terms, cell, reach, 'model');
-  if (terms.length === 0) throw new Malformed('the model has no term');
-  if (terms.reduce((most, t) => Math.max(most, t.range), 0) !== reach)
-    throw new Rejected('the range of the model is not that of its terms');
+export function* checkExhaustive(parts: Parts): Generator<number, string> {
+  const { h, range, charges, p, sweeps, pivots, statement: words } = read(parts);
 
-  const claim = fields(document.claim, ['range', 'dimensions', 'rings', 'statement', 'assumes'], 'claim');
-  const range = natural(claim.range, 'range of the claim', 1, MAX_RANGE);
-  const dimensions = list(claim.dimensions, 'dimensions', range).map((d) =>
-    natural(d, 'a dimension', 0, MAX_CHARGES),
-  );
-  const rings = natural(claim.rings, 'rings', 1, 2 ** 16);
-  const words = string(claim.statement, 'statement');
-  const assumes = list(claim.assumes, 'assumes', ASSUMES.length).map((a) => string(a, 'an assumption'));
-  if (dimensions.length !== range) throw new Rejected('not one dimension for every range of the claim');
-  if (rings !== 2 * range + 2 * reach - 3)
-    throw new Rejected('the smallest ring is not 2·range + 2·(range of the model) − 3 cells');
-  if (words !== statement({ cell, range, dimensions, rings }))
-    throw new Rejected('the statement does not say what the numbers say');
-  if (assumes.join('\n') !== ASSUMES.join('\n'))
-    throw new Rejected('the assumptions are not those of this kind');
-
-  const charges = list(document.charges, 'charges', MAX_CHARGES).map((value, i): Charge => {
-    const name = `charge ${i + 1}`;
-    const charge = fields(value, ['range', 'terms'], name);
-    const own = natural(charge.range, `range of ${name}`, 1, range);
-    return { range: own, terms: readTerms(charge.terms, cell, own, name) };
-  });
-
-  const evidence = fields(document.evidence, ['prime', 'sweeps', 'pivots'], 'evidence');
-  const p = natural(evidence.prime, 'prime', 3, PRIME_BOUND - 1);
-  const sweeps = list(evidence.sweeps, 'sweeps', MAX_SWEEPS).map((value) => {
-    const pair = list(value, 'a sweep', 2);
-    if (pair.length !== 2) throw new Malformed('a sweep is not a pair');
-    return {
-      output: natural(pair[0]!, 'range of a sweep', 1, range + reach - 1),
-      used: natural(pair[1]!, 'uses of a sweep', 1, 2 ** 32),
-    };
-  });
-  const pivots = list(evidence.pivots, 'pivots', MAX_ROWS).map((value) => {
-    const text = string(value, 'a pivot');
-    return { word: readWord(text, cell, range + reach - 1, 'pivots'), cells: text.length / cell };
-  });
-  if (!isPrime(p)) throw new Rejected('the modulus of the evidence is not a prime');
-  if (cell * range > MAX_SPINS)
-    throw new Rejected('the range of the claim exceeds the limits of this checker');
-  const h = new Hamiltonian(cell, reach, terms, range);
-
-  // Lower bound: L1 to L3, and the count of C2.
-  for (let j = 1; j <= range; j++)
-    if (dimensions[j - 1] !== charges.filter((q) => q.range <= j).length)
-      throw new Rejected(`the dimension up to range ${j} is not the number of listed charges`);
-  charges.forEach((charge, i) => {
-    if (i > 0 && charge.range < charges[i - 1]!.range)
-      throw new Rejected('the charges are not sorted by range');
+  // Lower bound: L1 to L3.
+  for (const [i, charge] of charges.entries()) {
+    if (!charge.terms.some((t) => t.range === charge.range))
+      throw new Rejected(`charge ${i + 1} has no term of its range`);
     if (!commutes(h, charge, range))
       throw new Rejected(`charge ${i + 1} does not commute with the Hamiltonian`);
-  });
+    yield 0;
+  }
   yield* leadingPartsIndependent(charges, p);
 
   // Upper bound: U1 to U5.
-  const candidates = 4 ** (cell * range) - 4 ** (cell * (range - 1));
+  const candidates = 4 ** (h.cell * range) - 4 ** (h.cell * (range - 1));
   const replay = new Replay(h, range, p);
   let rank = 0;
   for (const [i, { output, used }] of sweeps.entries()) {
     let uses = 0;
-    const begin = 4 ** (cell * (output - 1));
-    const end = 4 ** (cell * output);
+    const begin = 4 ** (h.cell * (output - 1));
+    const end = 4 ** (h.cell * output);
     for (let from = begin; from < end; from += CHUNK) {
       uses += replay.sweep(output, from, Math.min(end, from + CHUNK));
       yield (0.9 * (i + (from - begin) / (end - begin))) / sweeps.length;
@@ -142,19 +94,88 @@ export function* checkExhaustive(
   for (let done = 0, step = core.next(); ; step = core.next(), done++) {
     if (step.done) {
       if (!step.value) throw new Rejected(`pivot ${done + 1} depends on the equations before it`);
-      break;
+      return words;
     }
-    if (done % 64 === 0) yield 0.9 + (0.1 * done) / rows.length;
+    yield 0.9 + (0.1 * done) / rows.length;
   }
-  return words;
+}
+
+/** The fields of section 2 with their forms, and C1 to C4; also that the modulus is prime, and the limits. */
+function read(parts: Parts) {
+  const model = fields(parts.model, ['cell', 'range', 'terms'], 'model');
+  const cell = natural(model.cell, 'cell', 1, MAX_CELL);
+  const reach = natural(model.range, 'range of the model', 1, MAX_RANGE);
+  const terms = readTerms(model.terms, cell, reach, 'model');
+  if (terms.length === 0) throw new Malformed('the model has no term');
+
+  const claim = fields(parts.claim, ['range', 'dimensions', 'rings', 'statement', 'assumes'], 'claim');
+  const range = natural(claim.range, 'range of the claim', 1, MAX_RANGE);
+  const dimensions = list(claim.dimensions, 'dimensions', range).map((d) =>
+    natural(d, 'a dimension', 0, MAX_CHARGES),
+  );
+  const rings = natural(claim.rings, 'rings', 1, 2 ** 16);
+  const words = string(claim.statement, 'statement');
+  const assumes = list(claim.assumes, 'assumes', ASSUMES.length).map((a) => string(a, 'an assumption'));
+
+  const charges = list(parts.charges, 'charges', MAX_CHARGES).map((value, i): Charge => {
+    const name = `charge ${i + 1}`;
+    const charge = fields(value, ['range', 'terms'], name);
+    const own = natural(charge.range, `range of ${name}`, 1, range);
+    return { range: own, terms: readTerms(charge.terms, cell, own, name) };
+  });
+
+  const evidence = fields(parts.evidence, ['prime', 'sweeps', 'pivots'], 'evidence');
+  const p = natural(evidence.prime, 'prime', 3, PRIME_BOUND - 1);
+  const sweeps = list(evidence.sweeps, 'sweeps', MAX_SWEEPS).map((value) => {
+    const pair = list(value, 'a sweep', 2);
+    if (pair.length !== 2) throw new Malformed('a sweep is not a pair');
+    return {
+      output: natural(pair[0]!, 'range of a sweep', 1, range + reach - 1),
+      used: natural(pair[1]!, 'uses of a sweep', 1, 2 ** 32),
+    };
+  });
+  const pivots = list(evidence.pivots, 'pivots', MAX_ROWS).map((value) => {
+    const text = string(value, 'a pivot');
+    return { word: readWord(text, cell, range + reach - 1, 'pivots'), cells: text.length / cell };
+  });
+
+  // C1 to C4.
+  if (terms.reduce((most, t) => Math.max(most, t.range), 0) !== reach)
+    throw new Rejected('the range of the model is not that of its terms');
+  if (rings !== 2 * range + 2 * reach - 3)
+    throw new Rejected('the smallest ring is not 2·range + 2·(range of the model) − 3 cells');
+  if (dimensions.length !== range) throw new Rejected('not one dimension for every range of the claim');
+  if (charges.some((charge, i) => i > 0 && charge.range < charges[i - 1]!.range))
+    throw new Rejected('the charges are not sorted by range');
+  for (let j = 1; j <= range; j++)
+    if (dimensions[j - 1] !== charges.filter((q) => q.range <= j).length)
+      throw new Rejected(`the dimension up to range ${j} is not the number of listed charges`);
+  if (words !== statement({ cell, range, dimensions, rings }))
+    throw new Rejected('the statement does not say what the numbers say');
+  if (assumes.join('\n') !== ASSUMES.join('\n'))
+    throw new Rejected('the assumptions are not those of this kind');
+
+  if (!isPrime(p)) throw new Rejected('the modulus of the evidence is not a prime');
+  if (cell * range > MAX_SPINS)
+    throw new Rejected('the range of the claim exceeds the limits of this checker');
+  if (sweeps.reduce((visits, { output }) => visits + 4 ** (cell * output), 0) > MAX_VISITS)
+    throw new Rejected('the sweeps exceed the limits of this checker');
+  return {
+    h: new Hamiltonian(cell, reach, terms, range),
+    range,
+    charges,
+    p,
+    sweeps,
+    pivots,
+    statement: words,
+  };
 }
 
 /** Outputs between two reports of progress. */
 const CHUNK = 2 ** 16;
 
 /** L1: is [H, Q] = 0, exactly? Every coefficient of i[H, Q]/2 is summed in integers. */
-function commutes(h: Hamiltonian, { terms, range }: Charge, longest: number): boolean {
-  if (!terms.some((t) => t.range === range)) return false;
+function commutes(h: Hamiltonian, { terms }: Charge, longest: number): boolean {
   const denominator = terms.reduce((d, t) => lcm(d, t.coefficient.denominator), 1n);
   const sums = new Map<number, bigint>();
   for (const { word, range: cells, coefficient: c } of terms) {
@@ -196,7 +217,7 @@ function* leadingPartsIndependent(charges: readonly Charge[], p: number): Genera
         );
       return;
     }
-    if (done % 64 === 0) yield 0;
+    yield 0;
   }
 }
 
@@ -207,7 +228,7 @@ function indexOf(indices: Map<number, number>, key: number): number {
   return indices.size - 1;
 }
 
-/** What the used equations say: every candidate is zero, or a factor times another one of its class. */
+/** The state of section 4, "Upper bound", what the used equations say: every candidate is zero, or a factor times another one of its class. */
 class Replay {
   /** By packed string: 0 for the representative of a class, `#zero` for what is zero, else another member of the class … */
   readonly #link: Uint32Array;
