@@ -64,6 +64,18 @@ export class WeightedForest {
     return e;
   }
 
+  /** The factor of a living element to its root. */
+  weightToRoot(element: number): number {
+    this.root(element);
+    return this.rootWeight;
+  }
+
+  /** Hangs a fresh element below its root, as it was in another forest; a root below itself. */
+  restore(element: number, root: number, weight: number): void {
+    this.link[element] = element === root ? 0 : root;
+    this.#weight[element] = weight;
+  }
+
   isZero(element: number): boolean {
     return this.root(element) === this.zero;
   }

@@ -3,7 +3,7 @@ import { createRequire } from 'node:module';
 import { freemem } from 'node:os';
 import { pathToFileURL } from 'node:url';
 import { Worker } from 'node:worker_threads';
-import { CancelledError, LimitError, VerificationError } from '../errors.ts';
+import { CancelledError, InputError, LimitError, VerificationError } from '../errors.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
 import { estimate } from './estimate.ts';
 import type { SearchResult } from './result.ts';
@@ -11,10 +11,12 @@ import type { SearchOptions } from './search.ts';
 import { plainModel, resultOf } from './transfer.ts';
 import type { Answer, Task } from './worker.ts';
 
-export interface BackgroundOptions extends SearchOptions {
+export interface BackgroundOptions extends Omit<SearchOptions, 'store'> {
   readonly signal?: AbortSignal;
   /** Bytes the search may use; the default is what the machine has free. A larger value overrides the refusal. */
   readonly memory?: number;
+  /** A folder that keeps finished layers: the same search, started again after a kill, goes on from the last one. */
+  readonly checkpoint?: string;
 }
 
 /**
@@ -23,7 +25,7 @@ export interface BackgroundOptions extends SearchOptions {
  * @throws LimitError before it starts when the estimate exceeds `memory`; CancelledError on abort; else as `searchNow`
  */
 export async function search(h: Hamiltonian, options: BackgroundOptions): Promise<SearchResult> {
-  const { range, signal, onProgress, memory = freeMemory(), primesBelow } = options;
+  const { range, signal, onProgress, memory = freeMemory(), primesBelow, checkpoint } = options;
   const need = estimate(h, range);
   if (need.bytes > memory)
     throw new LimitError(
@@ -31,7 +33,12 @@ export async function search(h: Hamiltonian, options: BackgroundOptions): Promis
         `${gigabytes(memory)} may be used. Give a larger memory limit to try all the same`,
     );
   if (signal?.aborted) throw new CancelledError('search');
-  const task: Task = { model: plainModel(h), range, ...(primesBelow === undefined ? {} : { primesBelow }) };
+  const task: Task = {
+    model: plainModel(h),
+    range,
+    ...(primesBelow === undefined ? {} : { primesBelow }),
+    ...(checkpoint === undefined ? {} : { checkpoint }),
+  };
   const worker = new Worker(...workerSource(task));
   try {
     return await new Promise<SearchResult>((resolve, reject) => {
@@ -44,7 +51,7 @@ export async function search(h: Hamiltonian, options: BackgroundOptions): Promis
             reject(error);
           }
         } else if (answer.kind === 'result') resolve(resultOf(h, answer.result));
-        else reject(errorOf(answer.name, answer.message));
+        else reject(errorOf(answer));
       });
       worker.on('error', reject);
       worker.on('exit', (code) =>
@@ -57,7 +64,8 @@ export async function search(h: Hamiltonian, options: BackgroundOptions): Promis
 }
 
 /** An allocation that the machine refuses arrives as a RangeError. */
-function errorOf(name: string, message: string): Error {
+function errorOf({ name, message, input }: Extract<Answer, { kind: 'error' }>): Error {
+  if (input !== undefined) return new InputError(input.who, input.expected, input.got);
   if (name === 'LimitError' || name === 'RangeError') return new LimitError(message);
   return new VerificationError(message);
 }

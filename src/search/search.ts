@@ -14,7 +14,7 @@ import type { Hamiltonian } from '../model/hamiltonian.ts';
 import { assemble, type RestrictedSystem } from './assemble.ts';
 import { type IntegerVector, liftCharges, type Mirror, type ModularBasis, modularBasis } from './charges.ts';
 import type { Charge, SearchResult } from './result.ts';
-import { aliveStrings, type OnProgress } from './sweep.ts';
+import { aliveStrings, type OnProgress, type SnapshotStore } from './sweep.ts';
 
 export interface SearchOptions {
   /** Largest range of the charges, in cells. */
@@ -23,6 +23,8 @@ export interface SearchOptions {
   readonly onProgress?: OnProgress;
   /** Primes are taken from below this bound, falling; the answer does not depend on it. */
   readonly primesBelow?: number;
+  /** Keeps finished layers, so that a search that was killed goes on from the last one. */
+  readonly store?: SnapshotStore;
 }
 
 /** Primes tried for the upper bound before giving up. Two in a row have never been seen to fail. */
@@ -37,7 +39,7 @@ const MAX_ATTEMPTS = 12;
  * @throws InputError when the range is no positive integer; LimitError when the candidates do not fit
  */
 export function searchNow(h: Hamiltonian, options: SearchOptions): SearchResult {
-  const { range, onProgress = () => {}, primesBelow: bound = PRIME_BOUND } = options;
+  const { range, onProgress = () => {}, primesBelow: bound = PRIME_BOUND, store } = options;
   if (!(Number.isInteger(range) && range >= 1))
     throw new InputError('search', 'a range of one cell or more, a whole number', show(range));
   const started = performance.now();
@@ -48,7 +50,7 @@ export function searchNow(h: Hamiltonian, options: SearchOptions): SearchResult 
     const next = fields.next();
     if (next.done) break;
     const field = next.value;
-    const alive = assemble(h, aliveStrings(h, range, field, onProgress), range, solving);
+    const alive = assemble(h, aliveStrings(h, range, field, onProgress, store), range, solving);
     const found = modularBasis(alive.matrix, mirrorOf(h, alive.strings), field);
     solving(0.5);
     const { system, basis } = restricted(h, alive, found, range);

@@ -31,6 +31,28 @@ export interface Progress {
   readonly candidates: number;
 }
 
+/** The state after a layer: everything that later layers can see. */
+export interface Snapshot {
+  /** Outputs of this range and above have been visited; 1 when the sweeps are over. */
+  readonly layer: number;
+  /**
+   * For every range that has been touched: the strings alive, the roots of their trees and the factors to them. All other
+   * strings of these ranges are zero.
+   */
+  readonly ranges: readonly {
+    readonly cells: number;
+    readonly strings: Float64Array;
+    readonly roots: Float64Array;
+    readonly weights: Float64Array;
+  }[];
+}
+
+/** Where snapshots are kept. Large layers are saved when they are done, small ones are not worth it. */
+export interface SnapshotStore {
+  load(prime: number): Snapshot | undefined;
+  save(prime: number, snapshot: Snapshot): void;
+}
+
 /** Called every few milliseconds to tenths of a second; whatever it throws stops the search. */
 export type OnProgress = (progress: Progress) => void;
 
@@ -46,6 +68,7 @@ export function aliveStrings(
   range: number,
   field: Field,
   onProgress: OnProgress = () => {},
+  store?: SnapshotStore,
 ): Float64Array {
   const n = h.chain.cell;
   const r = h.range;
@@ -336,10 +359,33 @@ export function aliveStrings(
     }
   };
 
-  for (layer = range + r - 1; layer >= 1; layer--) {
+  const snapshot = (): Snapshot => ({
+    layer,
+    // A layer's outputs grow from strings up to r − 1 cells shorter; below that nothing has been touched.
+    ranges: Array.from({ length: range }, (_, i) => i + 1)
+      .filter((cells) => layer === 1 || cells > layer - r)
+      .map((cells) => {
+        const strings = livingOf(cells);
+        const roots = strings.map((string) => forest.root(string));
+        return { cells, strings, roots, weights: strings.map((string) => forest.weightToRoot(string)) };
+      }),
+  });
+  const restore = (saved: Snapshot): void => {
+    for (const { cells, strings, roots, weights } of saved.ranges) {
+      for (let string = bound(cells - 1); string < bound(cells); string++)
+        if ((string & cellMask) !== 0) link[string] = zero;
+      for (const [i, string] of strings.entries()) forest.restore(string, roots[i]!, weights[i]!);
+      living[cells] = strings;
+    }
+  };
+
+  const saved = store?.load(field.p);
+  if (saved !== undefined) restore(saved);
+  for (layer = saved === undefined ? range + r - 1 : saved.layer - 1; layer >= 1; layer--) {
     sweepLayer(layer);
     visited += bound(layer);
     report();
+    if (layer === 1 || layer >= 2 * r) store?.save(field.p, snapshot());
   }
 
   const alive = Array.from({ length: range }, (_, i) => livingOf(i + 1));
