@@ -40,6 +40,7 @@ const PACKAGES: Readonly<Record<string, readonly string[]>> = {
 const NODE_FILES: Readonly<Record<string, string>> = {
   'search/background.ts': 'starts the worker thread',
   'search/worker.ts': 'runs in it',
+  'search/checkpoint.ts': 'files of finished layers, for the worker',
 };
 
 interface Import {

@@ -42,7 +42,7 @@ test('a search can go on from every layer', () => {
 
 test('ten kills at random moments end in the same bytes', async () => {
   const random = new Random(7);
-  const args = ['search', 'ZZ + 2 X + 3 Z', '--range', '10', '--json'];
+  const args = ['search', 'ZZ + 2 X + 3 Z', '--range', '9', '--json'];
   const run = (more: string[], killAfter?: number) =>
     new Promise<{ code: number | null; out: string }>((resolve) => {
       const child = spawn(process.execPath, ['--import', 'tsx', 'src/cli/main.ts', ...args, ...more]);
@@ -77,5 +77,5 @@ test('a damaged file counts as absent, one of another search is refused, an unwr
   }
   await expect(search(h, { range: 7, checkpoint: folder })).rejects.toThrow(InputError);
   await expect(search(parseModel('XX'), { range: 6, checkpoint: folder })).rejects.toThrow(/model and range/);
-  await expect(search(h, { range: 4, checkpoint: '/proc/none' })).rejects.toThrow(/can be written/);
+  await expect(search(h, { range: 4, checkpoint: join(file, 'inside') })).rejects.toThrow(/can be written/);
 });

@@ -32,6 +32,7 @@ ${MODEL_HELP}
 Search:
   --range K             largest range, in cells
   --certificate FILE    writes the proof, for "holdfast check FILE"
+  --checkpoint DIR      keeps finished layers there; the same search, started again, goes on from the last one
   --memory GB           refuse to start above so many gigabytes (default: what is free)
 
 Output:
@@ -47,6 +48,7 @@ Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
     range: { type: 'string' },
     json: { type: 'boolean' },
     certificate: { type: 'string' },
+    checkpoint: { type: 'string' },
     memory: { type: 'string' },
     unfold: { type: 'boolean' },
     latex: { type: 'boolean' },
@@ -59,12 +61,14 @@ Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
     if (input.values['json'] === true && input.values['latex'] === true)
       throw new InputError('command line', '--json or --latex', 'both');
     const model = await modelFromOptions(input);
+    const checkpoint = input.values['checkpoint'] as string | undefined;
     const line = progressLine(input);
     const result = await searchInBackground(model, {
       range,
       signal: input.signal,
       onProgress: line.show,
       ...(memory === undefined ? {} : { memory }),
+      ...(checkpoint === undefined ? {} : { checkpoint }),
     }).finally(line.clear);
     const { certificate, report, picture } = input.values as Readonly<Record<string, string | undefined>>;
     const proof =
