@@ -22,6 +22,7 @@ const MAX_SPINS = 13;
 const MAX_SWEEPS = 128;
 const MAX_VISITS = 2 ** 31;
 const MAX_CHARGES = 2 ** 16;
+const MAX_ENTRIES = 2 ** 10;
 
 export const KIND = 'exhaustive';
 
@@ -110,12 +111,12 @@ function read(parts: Parts) {
 
   const claim = fields(parts.claim, ['range', 'dimensions', 'rings', 'statement', 'assumes'], 'claim');
   const range = natural(claim.range, 'range of the claim', 1, MAX_RANGE);
-  const dimensions = list(claim.dimensions, 'dimensions', range).map((d) =>
+  const dimensions = list(claim.dimensions, 'dimensions', MAX_ENTRIES).map((d) =>
     natural(d, 'a dimension', 0, MAX_CHARGES),
   );
   const rings = natural(claim.rings, 'rings', 1, 2 ** 16);
   const words = string(claim.statement, 'statement');
-  const assumes = list(claim.assumes, 'assumes', ASSUMES.length).map((a) => string(a, 'an assumption'));
+  const assumes = list(claim.assumes, 'assumes', MAX_ENTRIES).map((a) => string(a, 'an assumption'));
 
   const charges = list(parts.charges, 'charges', MAX_CHARGES).map((value, i): Charge => {
     const name = `charge ${i + 1}`;
