@@ -22,14 +22,30 @@ export interface PageOptions {
 
 const FOLD = 144;
 
-/** The report on a search. Cost: the story of a small search (see `storyOf`), else the size of the page. */
-export function reportPage(
-  result: SearchResult,
-  { title, certificate, fold = FOLD }: PageOptions = {},
-): string {
+/** The report on a search as a document. Cost: the story of a small search (see `storyOf`), else the size of the page. */
+export function reportPage(result: SearchResult, options: PageOptions = {}): string {
+  return `<!doctype html>
+<html lang="en">
+<head>
+<meta charset="utf-8">
+<meta name="viewport" content="width=device-width, initial-scale=1">
+<title>${escapeMarkup(headingOf(result, options))}</title>
+<style>${REPORT_STYLE}</style>
+</head>
+<body>
+<main>
+${reportBody(result, options)}
+</main>
+</body>
+</html>
+`;
+}
+
+/** What is inside of the document's `<main>`, for pages with a frame of their own and `REPORT_STYLE`. */
+export function reportBody(result: SearchResult, options: PageOptions = {}): string {
+  const { certificate, fold = FOLD } = options;
   const { hamiltonian: h, charges, range, expansionOfH } = result;
   const formula = printDensity(h, h.density);
-  const heading = title ?? `Local charges of ${formula.length > 60 ? 'a spin chain' : formula}`;
   const sections = [
     section('model', 'Model', [
       mathmlEquation('H', h, h.density),
@@ -62,30 +78,21 @@ export function reportPage(
     ]),
     section('cite', 'How to cite', [citationBlock(result, certificate)]),
   ];
-  return `<!doctype html>
-<html lang="en">
-<head>
-<meta charset="utf-8">
-<meta name="viewport" content="width=device-width, initial-scale=1">
-<title>${escapeMarkup(heading)}</title>
-<style>${STYLE}</style>
-</head>
-<body>
-<main>
-<header>
+  return `<header>
 <p class="kind">Search report · range ≤ ${range}</p>
-<h1>${escapeMarkup(heading)}</h1>
+<h1>${escapeMarkup(headingOf(result, options))}</h1>
 <p class="verdict">${escapeMarkup(verdictOf(result))}</p>
 </header>
-${sections.join('\n')}
-</main>
-</body>
-</html>
-`;
+${sections.join('\n')}`;
+}
+
+function headingOf({ hamiltonian: h }: SearchResult, { title }: PageOptions): string {
+  const formula = printDensity(h, h.density);
+  return title ?? `Local charges of ${formula.length > 60 ? 'a spin chain' : formula}`;
 }
 
 function section(id: string, title: string, body: readonly string[]): string {
-  return `<section aria-labelledby="${id}">\n<h2 id="${id}">${title}</h2>\n${body.join('\n')}\n</section>`;
+  return `<section aria-labelledby="report-${id}">\n<h2 id="report-${id}">${title}</h2>\n${body.join('\n')}\n</section>`;
 }
 
 function countTable(result: SearchResult): string {
@@ -140,7 +147,8 @@ function dataUri(text: string): string {
   return `data:application/json;charset=utf-8,${encodeURIComponent(text).replaceAll("'", '%27')}`;
 }
 
-const STYLE = `
+/** For `reportBody`: plain, calm, and fit for paper. */
+export const REPORT_STYLE = `
 :root { color-scheme: light; --ink: #1d2935; --faint: #5b6875; --line: #cdd4db; --wash: #f4f6f8; }
 * { box-sizing: border-box; }
 body { margin: 0; background: #fff; color: var(--ink); font: 16px/1.55 Charter, "Bitstream Charter", "DejaVu Serif", Georgia, serif; }
