@@ -20,9 +20,10 @@ export class Replay {
   readonly #coefficients: Float64Array;
   readonly #limit: number;
   readonly #reach: number;
-  /** The row reduced last: representatives of classes and factors, none zero. */
-  readonly classes: number[] = [];
-  readonly factors: number[] = [];
+  /** The row reduced last: so many representatives of classes, and factors, none zero. */
+  #count = 0;
+  readonly #classes: Uint32Array;
+  readonly #factors: Uint32Array;
 
   /** @throws LimitError where strings do not fit the packed form */
   constructor(
@@ -41,6 +42,12 @@ export class Replay {
     // "Nothing in the first cell, X in the second" is no representative: its place is the zero root's.
     this.#forest = new WeightedForest(this.#limit - 1, 2 ** cellBits, field);
     this.#coefficients = Float64Array.from(values, (v) => field.residue(v));
+    const room = this.#table.start.reduce(
+      (most, end, w, start) => Math.max(most, end - (start[w - 1] ?? 0)),
+      0,
+    );
+    this.#classes = new Uint32Array(room * (range + 2 * h.range));
+    this.#factors = new Uint32Array(this.#classes.length);
   }
 
   /** Equations used so far: the rank they prove. */
@@ -67,21 +74,22 @@ export class Replay {
   }
 
   #visit(output: number, cells: number): boolean {
-    const { classes, factors } = this;
-    this.reduce(output, cells);
-    if (classes.length === 1) this.#forest.setZero(classes[0]!);
-    else if (classes.length === 2) this.#forest.tie(classes[0]!, factors[0]!, classes[1]!, factors[1]!);
-    return classes.length <= 2;
+    this.#reduce(output, cells);
+    const classes = this.#classes;
+    if (this.#count === 1) this.#forest.setZero(classes[0]!);
+    else if (this.#count === 2)
+      this.#forest.tie(classes[0]!, this.#factors[0]!, classes[1]!, this.#factors[1]!);
+    return this.#count <= 2;
   }
 
   /** The row of an output, in classes that may be non-zero. */
-  reduce(output: number, cells: number): void {
+  #reduce(output: number, cells: number): void {
     const { cellBits, bits, start, image } = this.#table;
-    const { classes, factors } = this;
+    const { link, zero } = this.#forest;
+    const limit = this.#limit;
     const cellMask = 2 ** cellBits - 1;
     const mask = 2 ** bits - 1;
-    classes.length = 0;
-    factors.length = 0;
+    this.#count = 0;
     for (let at = 1 - this.#reach; at < cells; at++) {
       // Inside, a term leaves both ends alone, and the parent is as long as the output.
       if (at === 1 && cells > this.range) at = Math.max(1, cells - this.#reach);
@@ -91,31 +99,35 @@ export class Replay {
       for (let i = start[window]!; i < start[window + 1]!; i++) {
         let parent = (shifted ^ ((image[i]! ^ window) << shift)) >>> 0;
         while ((parent & cellMask) === 0) parent >>>= cellBits;
-        if (parent < this.#limit) this.#add(parent, i);
+        if (parent < limit && link[parent] !== zero) this.#add(parent, i);
       }
     }
+    const classes = this.#classes;
+    const factors = this.#factors;
     let kept = 0;
-    for (let i = 0; i < classes.length; i++)
+    for (let i = 0; i < this.#count; i++)
       if (factors[i] !== 0) {
         classes[kept] = classes[i]!;
         factors[kept++] = factors[i]!;
       }
-    classes.length = kept;
-    factors.length = kept;
+    this.#count = kept;
   }
 
   #add(parent: number, entry: number): void {
     const forest = this.#forest;
-    if (forest.link[parent] === forest.zero) return;
     const root = forest.root(parent);
     if (root === forest.zero) return;
-    const { classes, factors, field } = this;
-    const term = field.multiply(this.#coefficients[this.#table.backward[entry]!]!, forest.rootWeight);
-    const at = classes.indexOf(root);
-    if (at < 0) {
-      classes.push(root);
-      factors.push(term);
-    } else factors[at] = (factors[at]! + term) % field.p;
+    const { multiply, p } = this.field;
+    const classes = this.#classes;
+    const factors = this.#factors;
+    const term = multiply(this.#coefficients[this.#table.backward[entry]!]!, forest.rootWeight);
+    let at = 0;
+    while (at < this.#count && classes[at] !== root) at++;
+    if (at === this.#count) {
+      classes[at] = root;
+      factors[at] = term;
+      this.#count++;
+    } else factors[at] = (factors[at]! + term) % p;
   }
 
   /** The rows of outputs with a class left, in classes numbered from 0 on as they come up. */
@@ -125,11 +137,11 @@ export class Replay {
     const rows: SparseVector[] = [];
     for (const [cells, open] of layers)
       for (const output of open) {
-        this.reduce(output, cells);
-        if (this.classes.length === 0) continue;
-        const entries = this.classes.map((c, i) => {
+        this.#reduce(output, cells);
+        if (this.#count === 0) continue;
+        const entries = Array.from(this.#classes.subarray(0, this.#count), (c, i) => {
           if (!index.has(c)) index.set(c, index.size);
-          return [index.get(c)!, this.factors[i]!] as const;
+          return [index.get(c)!, this.#factors[i]!] as const;
         });
         entries.sort((a, b) => a[0] - b[0]);
         outputs.push(output);

@@ -239,9 +239,10 @@ class Replay {
   readonly #zero: number;
   readonly #size: number;
   readonly #coefficients: Float64Array;
-  /** The row reduced last: representatives of classes, and their factors, none zero. */
-  readonly #classes: number[] = [];
-  readonly #factors: number[] = [];
+  /** The row reduced last: so many representatives of classes, and their factors, none zero. */
+  #count = 0;
+  readonly #classes: Uint32Array;
+  readonly #factors: Uint32Array;
   #factor = 1;
 
   constructor(
@@ -254,6 +255,8 @@ class Replay {
     this.#link = new Uint32Array(this.#size);
     this.#weight = new Uint32Array(this.#size);
     this.#coefficients = Float64Array.from(h.values, (value) => residue(value, p));
+    this.#classes = new Uint32Array(h.neighbours.length);
+    this.#factors = new Uint32Array(h.neighbours.length);
   }
 
   /** U2, for the outputs of `cells` cells from … to − 1, rising. @returns how many equations were used */
@@ -265,13 +268,14 @@ class Replay {
     for (let output = from; output < to; output++) {
       if ((output & cellMask) === 0) continue;
       this.#reduce(output, cells);
-      const [a, b] = this.#classes;
-      if (this.#classes.length === 1) link[a!] = this.#zero;
-      else if (this.#classes.length === 2) {
+      if (this.#count === 0 || this.#count > 2) continue;
+      const a = this.#classes[0]!;
+      if (this.#count === 1) link[a] = this.#zero;
+      else {
         // f·x_a + g·x_b = 0, so x_a = −g/f · x_b.
-        link[a!] = b!;
-        this.#weight[a!] = multiply(p - this.#factors[1]!, inverse(this.#factors[0]!, p), p);
-      } else continue;
+        link[a] = this.#classes[1]!;
+        this.#weight[a] = multiply(p - this.#factors[1]!, inverse(this.#factors[0]!, p), p);
+      }
       uses++;
     }
     return uses;
@@ -280,7 +284,11 @@ class Replay {
   /** U4: the row of an output in terms of the classes that are left, numbered by `classes`. */
   row(output: number, cells: number, classes: Map<number, number>): Row {
     this.#reduce(output, cells);
-    return { columns: this.#classes.map((c) => indexOf(classes, c)), values: [...this.#factors] };
+    const own = Array.from(this.#classes.subarray(0, this.#count));
+    return {
+      columns: own.map((c) => indexOf(classes, c)),
+      values: Array.from(this.#factors.subarray(0, this.#count)),
+    };
   }
 
   /** U1: the row of an output, what is known being used. */
@@ -288,29 +296,32 @@ class Replay {
     const { h, p } = this;
     const classes = this.#classes;
     const factors = this.#factors;
-    classes.length = 0;
-    factors.length = 0;
-    const count = h.visit(output, cells, this.range);
-    for (let i = 0; i < count; i++) {
-      const parent = h.neighbours[i]!;
-      if (parent >= this.#size || this.#link[parent] === this.#zero) continue;
+    const link = this.#link;
+    const zero = this.#zero;
+    const size = this.#size;
+    const { neighbours, coefficients } = h;
+    let count = 0;
+    const all = h.visit(output, cells, this.range);
+    for (let i = 0; i < all; i++) {
+      const parent = neighbours[i]!;
+      if (parent >= size || link[parent] === zero) continue;
       const root = this.#find(parent);
-      if (root === this.#zero) continue;
-      const term = multiply(this.#coefficients[h.coefficients[i]!]!, this.#factor, p);
-      const at = classes.indexOf(root);
-      if (at < 0) {
-        classes.push(root);
-        factors.push(term);
+      if (root === zero) continue;
+      const term = multiply(this.#coefficients[coefficients[i]!]!, this.#factor, p);
+      let at = 0;
+      while (at < count && classes[at] !== root) at++;
+      if (at === count) {
+        classes[count] = root;
+        factors[count++] = term;
       } else factors[at] = (factors[at]! + term) % p;
     }
     let kept = 0;
-    for (let i = 0; i < classes.length; i++)
+    for (let i = 0; i < count; i++)
       if (factors[i] !== 0) {
         classes[kept] = classes[i]!;
         factors[kept++] = factors[i]!;
       }
-    classes.length = kept;
-    factors.length = kept;
+    this.#count = kept;
   }
 
   /** The representative of a string's class, `#zero` for zero; x_string = `#factor` · x_representative. Halves the path on its way. */
