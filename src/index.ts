@@ -61,6 +61,7 @@ export {
 } from './model/schema.ts';
 export type { Site, Syntax } from './model/syntax.ts';
 export { citation } from './report/citation.ts';
+export { printVerdict } from './report/every-range.ts';
 export {
   type GroupedDensity,
   groupTerms,
@@ -82,3 +83,8 @@ export { EquationMatrix, type MatrixSize } from './search/matrix.ts';
 export type { Charge, SearchResult } from './search/result.ts';
 export { candidateCount, leadingWord, type SearchOptions, searchNow } from './search/search.ts';
 export type { OnProgress, Progress } from './search/sweep.ts';
+export type { Citation, PublishedTheorem } from './theory/citations.ts';
+export { type DecideOptions, decide } from './theory/decide.ts';
+export { type LadderOptions, ladder, NoLadderError, type Rung } from './theory/ladder.ts';
+export { PUBLISHED } from './theory/published/index.ts';
+export type { EveryRangeBound, Existence, Verdict } from './theory/verdict.ts';
