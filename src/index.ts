@@ -87,4 +87,4 @@ export type { Citation, PublishedTheorem } from './theory/citations.ts';
 export { type DecideOptions, decide } from './theory/decide.ts';
 export { type LadderOptions, ladder, NoLadderError, type Rung } from './theory/ladder.ts';
 export { PUBLISHED } from './theory/published/index.ts';
-export type { EveryRangeBound, Existence, Verdict } from './theory/verdict.ts';
+export type { EveryRangeBound, EveryRangeVerdict, Existence } from './theory/verdict.ts';

@@ -1,7 +1,7 @@
 /** An every-range verdict as text for a terminal. */
-import type { EveryRangeBound, Existence, Verdict } from '../theory/verdict.ts';
+import type { EveryRangeBound, EveryRangeVerdict, Existence } from '../theory/verdict.ts';
 
-export function printVerdict(verdict: Verdict): string {
+export function printVerdict(verdict: EveryRangeVerdict): string {
   const { search, cautions } = verdict;
   const counts = search.dimensionByRange.map((d, j) => d - (search.dimensionByRange[j - 1] ?? 0));
   const lines = [headline(verdict), ''];
@@ -11,7 +11,7 @@ export function printVerdict(verdict: Verdict): string {
   return `${lines.join('\n')}\n`;
 }
 
-function headline(verdict: Verdict): string {
+function headline(verdict: EveryRangeVerdict): string {
   switch (verdict.kind) {
     case 'none':
       return `No charge of any range ≥ ${verdict.from}.`;
@@ -36,7 +36,7 @@ function except({ exceptional }: EveryRangeBound): string {
     : `, except range ${exceptional.map((e) => `${e.range} (at most ${e.atMost})`).join(', ')}`;
 }
 
-function reasons(verdict: Verdict): string[] {
+function reasons(verdict: EveryRangeVerdict): string[] {
   switch (verdict.kind) {
     case 'none':
       return [upper(verdict.bound)];

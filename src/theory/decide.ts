@@ -12,7 +12,12 @@ import { CellGrowth, injectivity } from './growth.ts';
 import { CORE_LENGTH, HalfStepGrowth, halfSteps } from './half-steps.ts';
 import { ladderBase } from './ladder.ts';
 import { boundsOf } from './pencil.ts';
-import { EVERY_RANGE_CAUTIONS, type EveryRangeBound, type Existence, type Verdict } from './verdict.ts';
+import {
+  EVERY_RANGE_CAUTIONS,
+  type EveryRangeBound,
+  type EveryRangeVerdict,
+  type Existence,
+} from './verdict.ts';
 
 export interface DecideOptions {
   /** The exhaustive search goes at least so far, in cells; by default as far as the verdict needs, and a little further where it is open. */
@@ -36,7 +41,10 @@ const MAX_HALF_STEP_SPINS = 2;
  *
  * @throws InputError as `searchNow` does
  */
-export function decide(h: Hamiltonian, { searchRange = 1, onStage = () => {} }: DecideOptions = {}): Verdict {
+export function decide(
+  h: Hamiltonian,
+  { searchRange = 1, onStage = () => {} }: DecideOptions = {},
+): EveryRangeVerdict {
   onStage('lemmas');
   const model = decompose(h);
   const bound = model === undefined ? tooWide(h) : everyRangeBound(model);

@@ -32,7 +32,7 @@ interface Common {
   readonly cautions: readonly string[];
 }
 
-export type Verdict = Common &
+export type EveryRangeVerdict = Common &
   (
     | {
         /** No charge of range ≥ `from` cells at all; those below are in `search`. */

@@ -4,7 +4,7 @@ import { CancelledError, InputError, show } from '../../errors.ts';
 import { printVerdict } from '../../report/every-range.ts';
 import { resultToJson } from '../../report/json.ts';
 import { decide as decideModel } from '../../theory/decide.ts';
-import type { Verdict } from '../../theory/verdict.ts';
+import type { EveryRangeVerdict } from '../../theory/verdict.ts';
 import { type Command, Exit } from '../command.ts';
 import { MODEL_HELP, MODEL_OPTIONS, modelFromOptions } from '../model-options.ts';
 
@@ -58,7 +58,7 @@ Exit status: 0 a verdict of one of the first four kinds, 1 undecided or a failur
 };
 
 /** The JSON contract of `--json`. Integers of the pencil are texts, since they may be long. */
-export function verdictToJson(verdict: Verdict): object {
+export function verdictToJson(verdict: EveryRangeVerdict): object {
   const bound = 'bound' in verdict ? verdict.bound : null;
   const rows = (matrix: readonly (readonly bigint[])[]) => matrix.map((row) => row.map(String));
   return {
