@@ -74,6 +74,7 @@ export { latexDensity, latexEquation, latexResult } from './report/latex.ts';
 export { mathmlEquation } from './report/mathml.ts';
 export { type PageOptions, reportPage } from './report/page.ts';
 export { growthPicture, legendPicture, pictureOfCharge, pictureOfResult } from './report/picture.ts';
+export { DISPLAY, type Display, displayOf, rich } from './report/rich.ts';
 export { type Story, type StoryLayer, type StoryStep, storyOf, tellLayer, tellStep } from './report/story.ts';
 export { printCharge, printDensity, printResult, type TextOptions } from './report/text.ts';
 export { CAUTIONS, verdictOf } from './report/verdict.ts';

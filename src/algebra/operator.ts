@@ -6,6 +6,7 @@
  */
 
 import { InputError } from '../errors.ts';
+import { clipped, INSPECT } from './printed.ts';
 import {
   type Exact,
   exact,
@@ -182,6 +183,10 @@ export class Operator {
       text += `${text === '' ? (negative ? '-' : '') : negative ? ' - ' : ' + '}${factor}${textFromWord(word, length)}`;
     }
     return text === '' ? '0' : text;
+  }
+
+  [INSPECT](): string {
+    return `Operator(${clipped(this.toString(), `${this.size} terms`)})`;
   }
 
   toJSON(): Record<string, string> {

@@ -6,6 +6,7 @@
  * products cost the number of terms, and its product. Variables have no names in here; printing takes them.
  */
 import { InputError, show } from '../errors.ts';
+import { clipped, INSPECT } from './printed.ts';
 import { type Exact, exact, gcd, lcm, ONE, type Rational, rational, textFromRational } from './rational.ts';
 
 /** A packed exponent vector, variable 0 lowest; the constant monomial is 0n. */
@@ -168,6 +169,18 @@ export class Polynomial {
     for (const [monomial, value] of this.numerators)
       if (other.numerators.get(monomial) !== value) return false;
     return true;
+  }
+
+  [INSPECT](): string {
+    const variables = Array.from({ length: this.#variables() }, (_, v) => `x${v}`);
+    return `Polynomial(${clipped(this.toString(variables), `${this.size} terms`)})`;
+  }
+
+  /** One more than the last variable that occurs. */
+  #variables(): number {
+    let bits = 0;
+    for (const monomial of this.numerators.keys()) bits = Math.max(bits, monomial.toString(2).length);
+    return Math.ceil(bits / Number(EXPONENT_BITS));
   }
 
   /** For example `2 Jx^2*hz - 1/2`; a formula with these names reads it back. */

@@ -5,6 +5,7 @@
  * cells; the representative of a string is its translate whose first non-identity cell is cell 0.
  */
 import { Operator } from '../algebra/operator.ts';
+import { INSPECT } from '../algebra/printed.ts';
 import { firstSpin, phaseExponent, product, reverse, spanOf, type Word } from '../algebra/word.ts';
 import { InputError, show } from '../errors.ts';
 
@@ -16,6 +17,10 @@ export class Chain {
   constructor(readonly cell: number) {
     if (!(Number.isInteger(cell) && cell >= 1 && cell <= MAX_CELL))
       throw new InputError('cell', `a whole number of spins from 1 to ${MAX_CELL}`, show(cell));
+  }
+
+  [INSPECT](): string {
+    return `Chain(${this.cell} spin${this.cell === 1 ? '' : 's'} a cell)`;
   }
 
   /** Number of cells from the first to the last on which the string acts; 0 for the identity. */

@@ -1,5 +1,6 @@
 /** A validated model: an exact translation-invariant Hamiltonian on a chain of cells. */
 import type { Operator } from '../algebra/operator.ts';
+import { clipped, printedAs } from '../algebra/printed.ts';
 import { InputError } from '../errors.ts';
 import type { Chain, Reflection } from '../lattice/chain.ts';
 
@@ -20,10 +21,16 @@ export interface Hamiltonian {
 export function hamiltonianOf(chain: Chain, density: Operator): Hamiltonian {
   const normal = chain.normalise(density);
   if (normal.isZero()) throw new InputError('model', 'a density with a term that is not a constant', 'zero');
-  return Object.freeze({
+  const h: Hamiltonian = {
     chain,
     density: normal,
     range: chain.rangeOf(normal),
     reflection: chain.reflectionOf(normal),
-  });
+  };
+  return Object.freeze(printedAs(h, shortForm));
+}
+
+function shortForm({ chain, density, range }: Hamiltonian): string {
+  const cell = chain.cell === 1 ? '' : `, ${chain.cell} spins a cell`;
+  return `Hamiltonian(${clipped(density.toString(), `${density.size} terms`)}; range ${range}${cell})`;
 }

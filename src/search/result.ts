@@ -1,5 +1,6 @@
 /** What a search returns. Plain frozen values; `src/cli` and `src/report` print them. */
 import type { Operator } from '../algebra/operator.ts';
+import { clipped, printedAs } from '../algebra/printed.ts';
 import type { Rational } from '../algebra/rational.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
 
@@ -28,4 +29,25 @@ export interface SearchResult {
   readonly primes: readonly number[];
   readonly candidates: number;
   readonly milliseconds: number;
+}
+
+/** Frozen, with a short form for consoles. */
+export function chargeFrom(fields: Charge): Charge {
+  return Object.freeze(
+    printedAs({ ...fields }, ({ range, parity, density }) => {
+      const kind = parity === null ? '' : `, ${parity}`;
+      return `Charge(range ${range}${kind}: ${clipped(density.toString(), `${density.size} terms`)})`;
+    }),
+  );
+}
+
+/** Frozen, with a short form for consoles. */
+export function resultFrom(fields: SearchResult): SearchResult {
+  return Object.freeze(
+    printedAs(
+      { ...fields, charges: Object.freeze(fields.charges.map(chargeFrom)) },
+      ({ charges, range, dimensionByRange }) =>
+        `SearchResult(range ≤ ${range}: ${charges.length} charge${charges.length === 1 ? '' : 's'}, complete; dimensions ${dimensionByRange.join(' ')})`,
+    ),
+  );
 }

@@ -13,7 +13,7 @@ import type { SparseVector } from '../linear/sparse.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
 import { assemble, type RestrictedSystem } from './assemble.ts';
 import { type IntegerVector, liftCharges, type Mirror, type ModularBasis, modularBasis } from './charges.ts';
-import type { Charge, SearchResult } from './result.ts';
+import { type Charge, resultFrom, type SearchResult } from './result.ts';
 import { aliveStrings, type OnProgress, type SnapshotStore } from './sweep.ts';
 
 export interface SearchOptions {
@@ -61,13 +61,13 @@ export function searchNow(h: Hamiltonian, options: SearchOptions): SearchResult 
     const charges = lifted.charges
       .map((charge) => chargeOf(h, system.strings, charge))
       .sort((a, b) => a.range - b.range || Number(a.parity === 'odd') - Number(b.parity === 'odd'));
-    return Object.freeze({
+    return resultFrom({
       hamiltonian: h,
       range,
       dimensionByRange: Object.freeze(
         Array.from({ length: range }, (_, j) => charges.filter((q) => q.range <= j + 1).length),
       ),
-      charges: Object.freeze(charges),
+      charges,
       expansionOfH: h.range > range ? null : expansion(h, charges),
       minimumCells: 2 * range + 2 * h.range - 3,
       primes: Object.freeze(lifted.primes),
@@ -119,11 +119,11 @@ function mirrorOf(h: Hamiltonian, strings: Float64Array): Mirror {
 function chargeOf(h: Hamiltonian, strings: Float64Array, { columns, values, parity }: IntegerVector): Charge {
   const density = Operator.fromIntegers(columns.map((c, i) => [BigInt(strings[c]!), values[i]!] as const));
   // The leading string comes first in canonical order, and its coefficient is positive: reduced rows lead with 1.
-  return Object.freeze({
+  return {
     range: h.chain.range(BigInt(strings[columns[0]!]!)),
     parity: h.reflection === null ? null : parity,
     density,
-  });
+  };
 }
 
 /** H in the basis: its coefficient at a charge's leading string over the charge's own, part by part. */

@@ -4,7 +4,7 @@ import type { Rational } from '../algebra/rational.ts';
 import type { Word } from '../algebra/word.ts';
 import { Chain } from '../lattice/chain.ts';
 import { type Hamiltonian, hamiltonianOf } from '../model/hamiltonian.ts';
-import type { Charge, SearchResult } from './result.ts';
+import { type Charge, resultFrom, type SearchResult } from './result.ts';
 
 /** An operator without its class. */
 export interface PlainOperator {
@@ -44,9 +44,9 @@ export function plainResult({ hamiltonian: _, ...result }: SearchResult): PlainR
 
 /** @param hamiltonian the model that was searched */
 export function resultOf(hamiltonian: Hamiltonian, data: PlainResult): SearchResult {
-  return Object.freeze({
+  return resultFrom({
     ...data,
     hamiltonian,
-    charges: Object.freeze(data.charges.map((q) => Object.freeze({ ...q, density: operator(q.density) }))),
+    charges: data.charges.map((q) => ({ ...q, density: operator(q.density) })),
   });
 }
