@@ -60,7 +60,30 @@ export {
   readModelDocument,
 } from './model/schema.ts';
 export type { Site, Syntax } from './model/syntax.ts';
+export {
+  boostDerivative,
+  type ChargeAlgebra,
+  type Commutator,
+  chargeAlgebra,
+  type Derivative,
+  type Parities,
+  paritiesOf,
+} from './physics/charge-algebra.ts';
+export { type Current, currentOf, isContinuous, localCommutator, type Placed } from './physics/currents.ts';
+export { innerProduct } from './physics/inner-product.ts';
+export { type MazurBound, mazurBounds, type OverlapOptions } from './physics/overlaps.ts';
+export {
+  type Correction,
+  type CorrectionOptions,
+  type NearestCharge,
+  nearestCharge,
+  type Residual,
+  residual,
+  smallestCorrection,
+} from './physics/residual.ts';
+export { boundPicture } from './report/bound-picture.ts';
 export { citation } from './report/citation.ts';
+export { decimalText } from './report/decimal.ts';
 export { printVerdict } from './report/every-range.ts';
 export {
   type GroupedDensity,

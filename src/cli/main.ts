@@ -4,15 +4,31 @@ import { parseArgs } from 'node:util';
 import { VERSION } from '../certificate/version.ts';
 import { HoldfastError, InputError } from '../errors.ts';
 import { type Command, type CommandInput, Exit } from './command.ts';
+import { algebra } from './commands/algebra.ts';
+import { bound } from './commands/bound.ts';
 import { check } from './commands/check.ts';
 import { cite } from './commands/cite.ts';
+import { currents } from './commands/currents.ts';
 import { decide } from './commands/decide.ts';
 import { demo } from './commands/demo.ts';
 import { ladder } from './commands/ladder.ts';
 import { matrix } from './commands/matrix.ts';
+import { residual } from './commands/residual.ts';
 import { search } from './commands/search.ts';
 
-const COMMANDS: readonly Command[] = [search, decide, ladder, check, cite, matrix, demo];
+const COMMANDS: readonly Command[] = [
+  search,
+  decide,
+  ladder,
+  residual,
+  currents,
+  algebra,
+  bound,
+  check,
+  cite,
+  matrix,
+  demo,
+];
 
 const USAGE = `holdfast finds all local conserved quantities of a spin chain up to a range, exactly, or proves that there are none.
 
