@@ -12,7 +12,8 @@ import { type Exact, exact, gcd, lcm, ONE, type Rational, rational, textFromRati
 /** A packed exponent vector, variable 0 lowest; the constant monomial is 0n. */
 export type Monomial = bigint;
 
-const EXPONENT_BITS = 16n;
+/** Bits of a monomial that belong to one variable. */
+export const EXPONENT_BITS = 16n;
 const EXPONENT_MASK = (1n << EXPONENT_BITS) - 1n;
 
 /** Highest power of a variable that still packs. */
