@@ -5,13 +5,13 @@
  * the vanishing parts join the queue. Closed cases are disjoint, cover the whole real parameter space, and each has one answer: the
  * dimension by range, and charges with polynomial coefficients that are re-multiplied exactly.
  */
-import type { Polynomial } from '../../algebra/polynomial.ts';
+import { Polynomial } from '../../algebra/polynomial.ts';
 import type { Rational } from '../../algebra/rational.ts';
 import { InputError, LimitError, show, VerificationError } from '../../errors.ts';
 import { primeField, primesBelow } from '../../linear/field.ts';
-import { type Family, familyAt } from '../../model/formula.ts';
+import { type Family, familyAt, parseModel } from '../../model/formula.ts';
 import { candidateCount, searchNow } from '../../search/search.ts';
-import { type Case, EVERYWHERE, equationsOf } from './case.ts';
+import { type Case, EVERYWHERE, equationsOf, exclude, impose } from './case.ts';
 import { commutesOn, type PolynomialDensity, primitiveDensity, termsOn } from './charges.ts';
 import { CaseElimination, type NullSpace, UnluckyPoint } from './elimination.ts';
 import { type FamilyEquations, familyEquations } from './equations.ts';
@@ -31,7 +31,7 @@ export interface FamilyCase {
   readonly nonZero: readonly Polynomial[];
   /** Entry j − 1: the dimension of the space of charges of range ≤ j, the same everywhere on the case. */
   readonly dimensionByRange: readonly number[];
-  /** A basis, by rising range; empty where H itself vanishes and everything is conserved. */
+  /** A basis, by rising range; empty where it is not written out: H vanishes there, or is a field on spins that do not interact. */
   readonly charges: readonly FamilyCharge[];
   /** A rational point of the case at which the plain search gave the same dimensions; null: none found, the case may be empty. */
   readonly point: readonly Rational[] | null;
@@ -130,6 +130,8 @@ function* closeCase(
     if (point === undefined) continue;
     const terms = termsOn(where, family);
     if (terms.every((p) => p.isZero())) return everythingConserved(family, equations.range, where);
+    const free = freeSpins(family, equations.range, where, terms, spawn);
+    if (free !== undefined) return free;
     const elimination = new CaseElimination(equations, terms, where, field, point, spawn);
     let found: NullSpace;
     try {
@@ -176,6 +178,29 @@ function* closeCase(
 function everythingConserved({ chain, parameters }: Family, range: number, where: Case): FamilyCase {
   const dimensions = Array.from({ length: range }, (_, j) => candidateCount(chain.cell, j + 1));
   return closedCase(where, dimensions, [], rationalPoint(where, parameters.length, seededRandom(7)) ?? null);
+}
+
+/**
+ * Spins that do not interact: on a chain of single spins every field h ≠ 0 is a rotation of |h| Z, the same at every cell, and a
+ * rotation keeps ranges. So the dimensions are those of Z, on all of the case; the charges are those of Z rotated, whose coefficients
+ * need |h| and are not written out. Undefined where spins interact.
+ */
+function freeSpins(
+  family: Family,
+  range: number,
+  where: Case,
+  terms: readonly Polynomial[],
+  spawn: (cases: readonly Case[]) => void,
+): FamilyCase | undefined {
+  const { chain, parameters } = family;
+  if (chain.cell !== 1 || family.terms.some(([word], t) => !terms[t]!.isZero() && chain.range(word) > 1))
+    return undefined;
+  const length = terms.reduce((sum, p) => sum.plus(p.times(p)), Polynomial.zero);
+  const rest = exclude(where, length);
+  spawn(impose(where, length));
+  if (rest === undefined) throw new VerificationError('family: a field that vanishes everywhere was not reduced to zero');
+  const { dimensionByRange } = searchNow(parseModel('Z'), { range });
+  return closedCase(rest, dimensionByRange, [], rationalPoint(rest, parameters.length, seededRandom(7)) ?? null);
 }
 
 function closedCase(

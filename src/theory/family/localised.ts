@@ -5,7 +5,7 @@
  * equations, so that it is zero exactly when its numerator is. Products of units, the bulk of a run, only add exponents. Every
  * coefficient also carries its value at one random point of the case modulo a prime: a non-zero value proves it non-zero.
  */
-import { Polynomial } from '../../algebra/polynomial.ts';
+import { type Monomial, Polynomial } from '../../algebra/polynomial.ts';
 import {
   coefficientsIn,
   divideExactly,
@@ -29,8 +29,8 @@ export interface Coefficient {
 
 export class Localisation {
   readonly units: Polynomial[] = [];
-  readonly #values: number[] = [];
-  readonly #inverses: number[] = [];
+  /** Each unit at a fixed integer point. */
+  readonly #samples: bigint[] = [];
   /** Unit index of a variable that is a unit itself. */
   readonly #unitOf = new Map<number, number>();
   readonly #carried: readonly { equation: Polynomial; variable: number }[];
@@ -64,8 +64,7 @@ export class Localisation {
     const [variable] = variablesOf(unit);
     if (unit.size === 1 && variable !== undefined) this.#unitOf.set(variable, this.units.length);
     this.units.push(unit);
-    this.#values.push(value);
-    this.#inverses.push(this.field.inverse(value));
+    this.#samples.push(integerValue(unit));
     return true;
   }
 
@@ -147,6 +146,7 @@ export class Localisation {
     if (numerator.isZero()) return this.zero;
     let p = numerator;
     let exponents = powers;
+    let added: number[] | undefined;
     for (let i = 0; i < this.#carried.length; i++) {
       const { equation, variable } = this.#carried[i]!;
       const { remainder, power } = pseudoRemainder(p, equation, variable);
@@ -159,10 +159,10 @@ export class Localisation {
     }
     if (p.isZero()) return this.zero;
     if (isConstant(p)) return { numerator: p.equals(Polynomial.one) ? Polynomial.one : p, powers: exponents, value };
-    const own = exponents.slice();
     const add = (u: number, e: number) => {
-      while (own.length <= u) own.push(0);
-      own[u]! += e;
+      added ??= exponents.slice();
+      while (added.length <= u) added.push(0);
+      added[u]! += e;
     };
     const monomial = commonMonomial(p);
     if (monomial !== 0n) {
@@ -176,17 +176,21 @@ export class Localisation {
       if (out !== 0n)
         p = Polynomial.fromIntegers([...p.numerators].map(([m, c]) => [m - out, c] as const), p.denominator);
     }
+    let sample = p.size > 1 ? integerValue(p) : 0n;
     for (let u = 0; u < this.units.length && p.size > 1; u++) {
       const unit = this.units[u]!;
       if (unit.size === 1 || unit.size > p.size * 4) continue;
-      for (;;) {
+      const own = this.#samples[u]!;
+      // A divisor divides at every integer point: most units are ruled out by one.
+      while (own === 0n || sample % own === 0n) {
         const quotient = divideExactly(p, unit);
         if (quotient === undefined) break;
         p = quotient;
+        sample = integerValue(p);
         add(u, 1);
       }
     }
-    return { numerator: p.equals(Polynomial.one) ? Polynomial.one : p, powers: own, value };
+    return { numerator: p.equals(Polynomial.one) ? Polynomial.one : p, powers: added ?? exponents, value };
   }
 
   /** The factors of a coefficient that are not units. */
@@ -201,4 +205,25 @@ function addPowers(a: readonly number[], b: readonly number[]): readonly number[
   const sum: number[] = [];
   for (let i = 0; i < a.length || i < b.length; i++) sum.push((a[i] ?? 0) + (b[i] ?? 0));
   return sum;
+}
+
+/** The numerators of a polynomial at a fixed integer point with large, unrelated coordinates. */
+function integerValue(p: Polynomial): bigint {
+  let sum = 0n;
+  for (const [monomial, value] of p.numerators) sum += value * valueOfMonomial(monomial);
+  return sum;
+}
+
+const COORDINATES = [1_009n, 2_003n, 3_511n, 4_801n, 6_007n, 7_109n, 8_209n, 9_311n];
+const MONOMIAL_VALUES = new Map<Monomial, bigint>([[0n, 1n]]);
+
+function valueOfMonomial(monomial: Monomial): bigint {
+  const known = MONOMIAL_VALUES.get(monomial);
+  if (known !== undefined) return known;
+  let value = 1n;
+  for (const v of variablesOf(Polynomial.fromIntegers([[monomial, 1n]])))
+    value *= (COORDINATES[v % COORDINATES.length]! + BigInt(Math.floor(v / COORDINATES.length))) ** BigInt(powerIn(monomial, v));
+  if (MONOMIAL_VALUES.size > 100_000) MONOMIAL_VALUES.clear();
+  MONOMIAL_VALUES.set(monomial, value);
+  return value;
 }
