@@ -7,7 +7,7 @@
  */
 import { Polynomial } from '../../algebra/polynomial.ts';
 import type { Rational } from '../../algebra/rational.ts';
-import { InputError, LimitError, show, VerificationError } from '../../errors.ts';
+import { CancelledError, InputError, LimitError, show, VerificationError } from '../../errors.ts';
 import { primeField, primesBelow } from '../../linear/field.ts';
 import { type Family, familyAt, parseModel } from '../../model/formula.ts';
 import { candidateCount, searchNow } from '../../search/search.ts';
@@ -55,6 +55,16 @@ export interface FamilyOptions {
   readonly range: number;
   /** Called while it runs; throwing from it stops the run and nothing is returned. */
   readonly onProgress?: (progress: FamilyProgress) => void;
+  /** Called whenever a case has been closed, with what is needed to go on from there. */
+  readonly onState?: (state: FamilyState) => void;
+  /** A state of an earlier run of the same family and range. */
+  readonly resume?: FamilyState;
+}
+
+/** A run between two cases. */
+export interface FamilyState {
+  readonly open: readonly Case[];
+  readonly closed: readonly FamilyCase[];
 }
 
 /** Candidates a family may have: coefficients are polynomials, so a candidate costs some hundred times what it costs a search. */
@@ -65,11 +75,32 @@ const MAX_ATTEMPTS = 12;
 
 /** All cases of a family up to a range. @throws as `familySteps` */
 export function classifyNow(family: Family, options: FamilyOptions): FamilyResult {
-  const steps = familySteps(family, options.range);
+  const steps = familySteps(family, options.range, options.resume, options.onState);
   for (;;) {
     const step = steps.next();
     if (step.done) return step.value;
     options.onProgress?.(step.value);
+  }
+}
+
+/** Milliseconds of work between two looks at the signal. */
+const SLICE = 25;
+
+/** As `classifyNow`, but leaves the event loop free between slices of work. @throws CancelledError on abort; else as `familySteps` */
+export async function classify(
+  family: Family,
+  { range, onProgress, signal, resume, onState }: FamilyOptions & { readonly signal?: AbortSignal },
+): Promise<FamilyResult> {
+  const steps = familySteps(family, range, resume, onState);
+  let last = performance.now();
+  for (;;) {
+    if (signal?.aborted) throw new CancelledError('family');
+    const step = steps.next();
+    if (step.done) return step.value;
+    if (performance.now() - last < SLICE) continue;
+    onProgress?.(step.value);
+    await new Promise((resolve) => setTimeout(resolve));
+    last = performance.now();
   }
 }
 
@@ -78,7 +109,12 @@ export function classifyNow(family: Family, options: FamilyOptions): FamilyResul
  *
  * @throws InputError without a free parameter or with a bad range; LimitError when there are too many candidates
  */
-export function* familySteps(family: Family, range: number): Generator<FamilyProgress, FamilyResult> {
+export function* familySteps(
+  family: Family,
+  range: number,
+  resume: FamilyState = { open: [EVERYWHERE], closed: [] },
+  onState: (state: FamilyState) => void = () => {},
+): Generator<FamilyProgress, FamilyResult> {
   if (!(Number.isInteger(range) && range >= 1))
     throw new InputError('family', 'a range of one cell or more, a whole number', show(range));
   if (family.parameters.length === 0)
@@ -90,8 +126,8 @@ export function* familySteps(family: Family, range: number): Generator<FamilyPro
     );
   const started = performance.now();
   const equations = familyEquations(family, range);
-  const open: Case[] = [EVERYWHERE];
-  const closed: FamilyCase[] = [];
+  const open = [...resume.open];
+  const closed = [...resume.closed];
   while (open.length > 0) {
     const where = open.pop()!;
     const steps = closeCase(family, equations, where, (cases) => void open.push(...cases));
@@ -99,6 +135,7 @@ export function* familySteps(family: Family, range: number): Generator<FamilyPro
       const step = steps.next();
       if (step.done) {
         closed.push(step.value);
+        onState({ open: [...open], closed: [...closed] });
         break;
       }
       yield { open: open.length + 1, closed: closed.length };

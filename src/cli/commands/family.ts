@@ -1,0 +1,86 @@
+/** `holdfast family`: for which couplings does a charge appear? */
+import { writeFile } from 'node:fs/promises';
+import { familyJson, familyLatex, printFamily } from '../../report/family.ts';
+import { type PlotWindow, plotFamily } from '../../report/family-plot.ts';
+import { InputError, show } from '../../errors.ts';
+import { classify } from '../../theory/family/classify.ts';
+import { type Command, type CommandInput, Exit } from '../command.ts';
+import { familyFromOptions, MODEL_HELP, MODEL_OPTIONS } from '../model-options.ts';
+import { rangeOption } from './search.ts';
+
+export const family: Command = {
+  name: 'family',
+  summary: 'for which couplings charges appear: every case of a family, with its charges',
+  help: `holdfast family FORMULA --range K
+
+Parameters without a value stay free. Splits the space of their real values into finitely many cases given by polynomial
+conditions, and finds all charges of range up to K in each, with polynomial coefficients.
+
+  holdfast family "ZZ + g X + h Z" --range 4
+  holdfast family "Jx XX + Jy YY + Jz ZZ + hx X + hy Y + hz Z" --range 3
+  holdfast family "XX + YY + Jz ZZ + hx X + hz Z" --set hx=1 --range 3 --plot map.svg
+
+${MODEL_HELP}
+
+Family:
+  --range K             largest range, in cells
+  --json                every case for machines, and nothing else, on standard output
+  --latex               the table of answers as a LaTeX tabular
+  --plot FILE           two free parameters: a map of the curves and points where more charges appear, as SVG
+  --window A:B,C:D      what the map shows of the two parameters (-3:3,-3:3)
+
+Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
+  options: {
+    ...MODEL_OPTIONS,
+    range: { type: 'string' },
+    json: { type: 'boolean' },
+    latex: { type: 'boolean' },
+    plot: { type: 'string' },
+    window: { type: 'string' },
+  },
+  async run(input) {
+    const range = rangeOption(input);
+    const plot = input.values['plot'] as string | undefined;
+    const view = windowOption(input);
+    if (input.values['json'] === true && input.values['latex'] === true)
+      throw new InputError('command line', '--json or --latex', 'both');
+    const members = await familyFromOptions(input);
+    if (plot !== undefined && members.parameters.length !== 2)
+      throw new InputError(
+        '--plot',
+        'two free parameters (give the others a value with --set)',
+        `${members.parameters.length}`,
+      );
+    const result = await classify(members, {
+      range,
+      signal: input.signal,
+      onProgress({ open, closed }) {
+        if (input.interactive) input.note(`\r\u001b[2Kcases: ${closed} closed, ${open} open`);
+      },
+    }).finally(() => {
+      if (input.interactive) input.note('\r\u001b[2K');
+    });
+    if (plot !== undefined) await save(plot, plotFamily(result, view));
+    if (input.values['json'] === true) input.out(`${JSON.stringify(familyJson(result), null, 2)}\n`);
+    else input.out(input.values['latex'] === true ? familyLatex(result) : printFamily(result));
+    return Exit.done;
+  },
+};
+
+async function save(path: string, text: string): Promise<void> {
+  try {
+    await writeFile(path, text);
+  } catch (error) {
+    throw new InputError('--plot', 'a file that can be written', `${show(path)}: ${(error as Error).message}`);
+  }
+}
+
+function windowOption({ values }: Pick<CommandInput, 'values'>): PlotWindow {
+  const text = (values['window'] ?? '-3:3,-3:3') as string;
+  const number = String.raw`(-?\d{1,6}(?:\.\d{1,6})?)`;
+  const match = new RegExp(`^${number}:${number},${number}:${number}$`).exec(text);
+  const [left, right, bottom, top] = (match ?? []).slice(1).map(Number) as [number, number, number, number];
+  if (match === null || left >= right || bottom >= top)
+    throw new InputError('--window', 'A:B,C:D with A < B and C < D', show(text));
+  return { left, right, bottom, top };
+}
