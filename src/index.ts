@@ -85,6 +85,8 @@ export { boundPicture } from './report/bound-picture.ts';
 export { citation } from './report/citation.ts';
 export { decimalText } from './report/decimal.ts';
 export { printVerdict } from './report/every-range.ts';
+export { familyJson, familyLatex, printFamily } from './report/family.ts';
+export { type PlotWindow, plotFamily } from './report/family-plot.ts';
 export {
   type GroupedDensity,
   groupTerms,
@@ -109,6 +111,19 @@ export { candidateCount, leadingWord, type SearchOptions, searchNow } from './se
 export type { OnProgress, Progress } from './search/sweep.ts';
 export type { Citation, PublishedTheorem } from './theory/citations.ts';
 export { type DecideOptions, decide } from './theory/decide.ts';
+export type { Case, Solved } from './theory/family/case.ts';
+export type { PolynomialDensity } from './theory/family/charges.ts';
+export {
+  classify,
+  classifyNow,
+  type FamilyCase,
+  type FamilyCharge,
+  type FamilyOptions,
+  type FamilyProgress,
+  type FamilyResult,
+  type FamilyState,
+} from './theory/family/classify.ts';
+export { type Answer, answersOf, type Locus } from './theory/family/loci.ts';
 export { type LadderOptions, ladder, NoLadderError, type Rung } from './theory/ladder.ts';
 export { PUBLISHED } from './theory/published/index.ts';
 export type { EveryRangeBound, EveryRangeVerdict, Existence } from './theory/verdict.ts';

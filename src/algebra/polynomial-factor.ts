@@ -7,6 +7,8 @@
  * linear factors tried. What is not split is not wrong, only less readable.
  * Method: textbook computer algebra, common practice, no source.
  */
+
+import { EXPONENT_BITS, type Monomial, Polynomial } from './polynomial.ts';
 import {
   coefficientsIn,
   degreeIn,
@@ -19,7 +21,6 @@ import {
   substitute,
   variablesOf,
 } from './polynomial-division.ts';
-import { EXPONENT_BITS, type Monomial, Polynomial } from './polynomial.ts';
 import { rational } from './rational.ts';
 
 /** The greatest common divisor, primitive; of zero and p it is p. */
@@ -44,7 +45,9 @@ function gcdWithoutMonomials(a: Polynomial, b: Polynomial): Polynomial {
   if (onlyA !== undefined) return polynomialGcd(contentIn(a, onlyA, b), b);
   const onlyB = vb.find((v) => !va.includes(v));
   if (onlyB !== undefined) return polynomialGcd(a, contentIn(b, onlyB, a));
-  const v = va.reduce((best, u) => (degreeIn(a, u) + degreeIn(b, u) < degreeIn(a, best) + degreeIn(b, best) ? u : best));
+  const v = va.reduce((best, u) =>
+    degreeIn(a, u) + degreeIn(b, u) < degreeIn(a, best) + degreeIn(b, best) ? u : best,
+  );
   const [ca, cb] = [contentIn(a, v), contentIn(b, v)];
   const content = polynomialGcd(ca, cb);
   let [p, q] = [divideExactly(a, ca)!, divideExactly(b, cb)!];
@@ -100,7 +103,10 @@ function imageIn(p: Polynomial, variable: number): number[] {
     let term = Number(((value % BigInt(PRIME)) + BigInt(PRIME)) % BigInt(PRIME));
     for (const v of variablesOf(Polynomial.fromIntegers([[monomial, 1n]])))
       if (v !== variable)
-        term = modularProduct(term, modularPower((7919 * (v + 1) * (v + 3) + 104_729) % PRIME, powerIn(monomial, v)));
+        term = modularProduct(
+          term,
+          modularPower((7919 * (v + 1) * (v + 3) + 104_729) % PRIME, powerIn(monomial, v)),
+        );
     const e = powerIn(monomial, variable);
     while (image.length <= e) image.push(0);
     image[e] = (image[e]! + term) % PRIME;
@@ -141,7 +147,11 @@ const MASK = (1n << EXPONENT_BITS) - 1n;
 
 function monomialGcd(a: Monomial, b: Monomial): Monomial {
   let common = 0n;
-  for (let x = a, y = b, at = 0n; x !== 0n && y !== 0n; x >>= EXPONENT_BITS, y >>= EXPONENT_BITS, at += EXPONENT_BITS) {
+  for (
+    let x = a, y = b, at = 0n;
+    x !== 0n && y !== 0n;
+    x >>= EXPONENT_BITS, y >>= EXPONENT_BITS, at += EXPONENT_BITS
+  ) {
     const [e, f] = [x & MASK, y & MASK];
     common |= (e < f ? e : f) << at;
   }
@@ -151,7 +161,10 @@ function monomialGcd(a: Monomial, b: Monomial): Monomial {
 function stripped(p: Polynomial, monomial: Monomial): Polynomial {
   return monomial === 0n
     ? p
-    : Polynomial.fromIntegers([...p.numerators].map(([m, value]) => [m - monomial, value] as const), p.denominator);
+    : Polynomial.fromIntegers(
+        [...p.numerators].map(([m, value]) => [m - monomial, value] as const),
+        p.denominator,
+      );
 }
 
 /** The distinct factors of positive degree, primitive, smallest first: their product vanishes where p does. Empty for constants. */
@@ -229,7 +242,15 @@ function integerRoot(n: bigint): bigint | undefined {
 }
 
 /** Values tried for a variable besides those of other variables. */
-const TRIAL_VALUES = [1n, 2n, 3n, 4n].flatMap((n) => [1n, 2n, 3n].flatMap((d) => [[n, d], [-n, d]] as [bigint, bigint][]));
+const TRIAL_VALUES = [1n, 2n, 3n, 4n].flatMap((n) =>
+  [1n, 2n, 3n].flatMap(
+    (d) =>
+      [
+        [n, d],
+        [-n, d],
+      ] as [bigint, bigint][],
+  ),
+);
 
 function splitByTrial(p: Polynomial, variables: readonly number[]): Polynomial[] | undefined {
   for (const v of variables) {

@@ -11,6 +11,7 @@ import { cite } from './commands/cite.ts';
 import { currents } from './commands/currents.ts';
 import { decide } from './commands/decide.ts';
 import { demo } from './commands/demo.ts';
+import { family } from './commands/family.ts';
 import { ladder } from './commands/ladder.ts';
 import { matrix } from './commands/matrix.ts';
 import { residual } from './commands/residual.ts';
@@ -19,6 +20,7 @@ import { search } from './commands/search.ts';
 const COMMANDS: readonly Command[] = [
   search,
   decide,
+  family,
   ladder,
   residual,
   currents,

@@ -7,6 +7,7 @@ import { powerIn } from '../algebra/polynomial-division.ts';
 import type { FamilyResult } from '../theory/family/classify.ts';
 import { answersOf, type Locus } from '../theory/family/loci.ts';
 import { conditionText } from './family.ts';
+import { escapeMarkup } from './markup.ts';
 
 export interface PlotWindow {
   readonly left: number;
@@ -44,7 +45,7 @@ export function plotFamily(result: FamilyResult, view: PlotWindow): string {
       if (locus.equations.length === 1) {
         const path = curve(locus.equations[0]!, view, px, py);
         body.push(
-          `<path d="${path}" fill="none" stroke="${stroke}" stroke-width="2.5" stroke-dasharray="${dash}"><title>${escape(label)}</title></path>`,
+          `<path d="${path}" fill="none" stroke="${stroke}" stroke-width="2.5" stroke-dasharray="${dash}"><title>${escapeMarkup(label)}</title></path>`,
         );
         legend.push({
           label,
@@ -57,7 +58,7 @@ export function plotFamily(result: FamilyResult, view: PlotWindow): string {
         const inside = at[0] >= view.left && at[0] <= view.right && at[1] >= view.bottom && at[1] <= view.top;
         if (inside)
           body.push(
-            `<circle cx="${px(at[0]).toFixed(1)}" cy="${py(at[1]).toFixed(1)}" r="5" fill="${stroke}" stroke="#fff"><title>${escape(label)}</title></circle>`,
+            `<circle cx="${px(at[0]).toFixed(1)}" cy="${py(at[1]).toFixed(1)}" r="5" fill="${stroke}" stroke="#fff"><title>${escapeMarkup(label)}</title></circle>`,
           );
         legend.push({ label, mark: `<circle cx="13" cy="-4" r="5" fill="${stroke}"/>` });
         style++;
@@ -83,12 +84,12 @@ export function plotFamily(result: FamilyResult, view: PlotWindow): string {
       (t) =>
         `<text x="${MARGIN.left - 8}" y="${(py(t) + 4).toFixed(1)}" text-anchor="end">${t}</text><line x1="${MARGIN.left - 4}" x2="${MARGIN.left}" y1="${py(t).toFixed(1)}" y2="${py(t).toFixed(1)}" stroke="#333"/>`,
     ),
-    `<text x="${MARGIN.left + SIDE / 2}" y="${MARGIN.top + SIDE + 42}" text-anchor="middle" font-style="italic">${escape(names[0]!)}</text>`,
-    `<text x="18" y="${MARGIN.top + SIDE / 2}" text-anchor="middle" font-style="italic">${escape(names[1]!)}</text>`,
+    `<text x="${MARGIN.left + SIDE / 2}" y="${MARGIN.top + SIDE + 42}" text-anchor="middle" font-style="italic">${escapeMarkup(names[0]!)}</text>`,
+    `<text x="18" y="${MARGIN.top + SIDE / 2}" text-anchor="middle" font-style="italic">${escapeMarkup(names[1]!)}</text>`,
     `<text x="${x0}" y="${MARGIN.top + 12}" font-weight="bold">Dimension up to range 1 … ${result.range}, and where</text>`,
     ...legend.map(
       ({ label, mark }, i) =>
-        `<g transform="translate(${x0} ${MARGIN.top + 40 + 22 * i})">${mark}<text x="36">${escape(label)}</text></g>`,
+        `<g transform="translate(${x0} ${MARGIN.top + 40 + 22 * i})">${mark}<text x="36">${escapeMarkup(label)}</text></g>`,
     ),
     '</svg>',
     '',
@@ -97,10 +98,6 @@ export function plotFamily(result: FamilyResult, view: PlotWindow): string {
 
 function square(fill: string, stroke: string): string {
   return `<rect x="6" y="-11" width="14" height="12" fill="${fill}" stroke="${stroke}"/>`;
-}
-
-function escape(text: string): string {
-  return text.replaceAll('&', '&amp;').replaceAll('<', '&lt;').replaceAll('>', '&gt;').replaceAll('"', '&quot;');
 }
 
 function ticks(low: number, high: number): number[] {
@@ -119,10 +116,13 @@ function pointOf({ general }: Locus): [number, number] | undefined {
 }
 
 /** The zero set of a polynomial in the window: segments between sign changes on the edges of a grid that avoids round numbers. */
-function curve(p: Polynomial, view: PlotWindow, px: (x: number) => number, py: (y: number) => number): string {
-  const terms = [...p.numerators].map(
-    ([m, value]) => [powerIn(m, 0), powerIn(m, 1), Number(value)] as const,
-  );
+function curve(
+  p: Polynomial,
+  view: PlotWindow,
+  px: (x: number) => number,
+  py: (y: number) => number,
+): string {
+  const terms = [...p.numerators].map(([m, value]) => [powerIn(m, 0), powerIn(m, 1), Number(value)] as const);
   const value = (x: number, y: number) => terms.reduce((sum, [a, b, c]) => sum + c * x ** a * y ** b, 0);
   const n = GRID + 2;
   const dx = (view.right - view.left) / GRID;

@@ -4,7 +4,8 @@ import { textFromRational } from '../algebra/rational.ts';
 import { textFromWord } from '../algebra/word.ts';
 import type { FamilyCase, FamilyCharge, FamilyResult } from '../theory/family/classify.ts';
 import { type Answer, answersOf, type Locus } from '../theory/family/loci.ts';
-import { CAUTIONS, type TextOptions } from './text.ts';
+import type { TextOptions } from './text.ts';
+import { CAUTIONS } from './verdict.ts';
 
 /** What a table of cases rests on. */
 export const FAMILY_CAUTIONS = [
@@ -35,7 +36,11 @@ export function printFamily(result: FamilyResult, { fold = 12 }: TextOptions = {
     if (locus.general.charges.length === 0) lines.push(`  ${withoutCharges(locus.general)}`);
     for (const charge of locus.general.charges) lines.push(`  ${chargeText(charge, names, fold)}`);
   }
-  lines.push('', ...evidence(result), `Holds on the infinite chain and on rings of ${minimumCells} cells or more.`);
+  lines.push(
+    '',
+    ...evidence(result),
+    `Holds on the infinite chain and on rings of ${minimumCells} cells or more.`,
+  );
   lines.push(...FAMILY_CAUTIONS);
   return `${lines.join('\n')}\n`;
 }
@@ -70,7 +75,10 @@ function signed(p: Polynomial, names: readonly string[]): string {
 }
 
 /** `Jx - Jy = 0, hz = 0`, or `general couplings`. */
-export function conditionText({ equations, except }: Pick<Locus, 'equations' | 'except'>, names: readonly string[]): string {
+export function conditionText(
+  { equations, except }: Pick<Locus, 'equations' | 'except'>,
+  names: readonly string[],
+): string {
   const parts = [
     ...equations.map((p) => `${signed(p, names)} = 0`),
     ...except.map((p) => `${signed(p, names)} ≠ 0`),

@@ -1,11 +1,12 @@
 /** `holdfast family`: for which couplings does a charge appear? */
-import { writeFile } from 'node:fs/promises';
+
+import { InputError, show } from '../../errors.ts';
 import { familyJson, familyLatex, printFamily } from '../../report/family.ts';
 import { type PlotWindow, plotFamily } from '../../report/family-plot.ts';
-import { InputError, show } from '../../errors.ts';
 import { classify } from '../../theory/family/classify.ts';
 import { type Command, type CommandInput, Exit } from '../command.ts';
 import { familyFromOptions, MODEL_HELP, MODEL_OPTIONS } from '../model-options.ts';
+import { writeFileWhole } from '../output-file.ts';
 import { rangeOption } from './search.ts';
 
 export const family: Command = {
@@ -60,20 +61,12 @@ Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
     }).finally(() => {
       if (input.interactive) input.note('\r\u001b[2K');
     });
-    if (plot !== undefined) await save(plot, plotFamily(result, view));
+    if (plot !== undefined) await writeFileWhole('--plot', plot, [plotFamily(result, view)], input.signal);
     if (input.values['json'] === true) input.out(`${JSON.stringify(familyJson(result), null, 2)}\n`);
     else input.out(input.values['latex'] === true ? familyLatex(result) : printFamily(result));
     return Exit.done;
   },
 };
-
-async function save(path: string, text: string): Promise<void> {
-  try {
-    await writeFile(path, text);
-  } catch (error) {
-    throw new InputError('--plot', 'a file that can be written', `${show(path)}: ${(error as Error).message}`);
-  }
-}
 
 function windowOption({ values }: Pick<CommandInput, 'values'>): PlotWindow {
   const text = (values['window'] ?? '-3:3,-3:3') as string;

@@ -94,9 +94,15 @@ function imposeFactor(where: Case, f: Polynomial): Case[] {
   const linear = variablesOf(f)
     .filter((v) => degreeIn(f, v) === 1)
     .map((v) => ({ v, coefficient: coefficientsIn(f, v)[1]! }))
-    .map((l) => ({ ...l, known: isConstant(l.coefficient) || openFactors(where, l.coefficient).length === 0 }));
+    .map((l) => ({
+      ...l,
+      known: isConstant(l.coefficient) || openFactors(where, l.coefficient).length === 0,
+    }));
   const rank = (l: (typeof linear)[number]) =>
-    (l.known ? 0 : 1000) + (isConstant(l.coefficient) ? 0 : 100) + totalDegree(l.coefficient) * 10 + l.coefficient.size;
+    (l.known ? 0 : 1000) +
+    (isConstant(l.coefficient) ? 0 : 100) +
+    totalDegree(l.coefficient) * 10 +
+    l.coefficient.size;
   linear.sort((a, b) => rank(a) - rank(b) || b.v - a.v);
   const best = linear[0];
   const v = best?.v ?? mainVariable(f);
@@ -260,7 +266,8 @@ export function equationsOf({ solved, carried }: Case): Polynomial[] {
 /** The point of the case at values of its free parameters: solved parameters follow. */
 export function completePoint({ solved }: Case, free: readonly Rational[]): Rational[] {
   const point = [...free];
-  for (const s of solved) point[s.variable] = divide(s.numerator.evaluate(free), s.denominator.evaluate(free));
+  for (const s of solved)
+    point[s.variable] = divide(s.numerator.evaluate(free), s.denominator.evaluate(free));
   return point;
 }
 
@@ -271,4 +278,3 @@ export function contains(where: Case, point: readonly Rational[]): boolean {
     equationsOf(where).every((p) => p.evaluate(point).numerator === 0n)
   );
 }
-

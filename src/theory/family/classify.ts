@@ -235,9 +235,15 @@ function freeSpins(
   const length = terms.reduce((sum, p) => sum.plus(p.times(p)), Polynomial.zero);
   const rest = exclude(where, length);
   spawn(impose(where, length));
-  if (rest === undefined) throw new VerificationError('family: a field that vanishes everywhere was not reduced to zero');
+  if (rest === undefined)
+    throw new VerificationError('family: a field that vanishes everywhere was not reduced to zero');
   const { dimensionByRange } = searchNow(parseModel('Z'), { range });
-  return closedCase(rest, dimensionByRange, [], rationalPoint(rest, parameters.length, seededRandom(7)) ?? null);
+  return closedCase(
+    rest,
+    dimensionByRange,
+    [],
+    rationalPoint(rest, parameters.length, seededRandom(7)) ?? null,
+  );
 }
 
 function closedCase(

@@ -30,7 +30,10 @@ export interface NullSpace {
   /** The part of the case on which this holds. */
   readonly where: Case;
   /** One vector a charge, by range of the charge, falling: columns and polynomial entries. */
-  readonly vectors: readonly { readonly range: number; readonly entries: readonly (readonly [number, Polynomial])[] }[];
+  readonly vectors: readonly {
+    readonly range: number;
+    readonly entries: readonly (readonly [number, Polynomial])[];
+  }[];
 }
 
 /** The shadow point turned out not to lie on the part of the case at hand: run again from `where` with another. */
@@ -272,7 +275,8 @@ export class CaseElimination {
     for (const factor of factors) {
       this.spawn(impose(this.where, factor));
       const rest = exclude(this.where, factor);
-      if (rest === undefined) throw new VerificationError('family: a factor without points where it is non-zero');
+      if (rest === undefined)
+        throw new VerificationError('family: a factor without points where it is non-zero');
       this.where = rest;
     }
     for (const unit of this.where.nonZero.slice(known))

@@ -43,4 +43,3 @@ export function familyEquations(family: Family, range: number): FamilyEquations 
     term: Int16Array.from(matrix.value, (v) => Number(matrix.values[v])),
   };
 }
-

@@ -153,12 +153,16 @@ export class Localisation {
       p = remainder;
       if (power === 0) continue;
       const initial = this.#initials[i]!;
-      exponents = addPowers(exponents, initial.powers.map((e) => -e * power));
+      exponents = addPowers(
+        exponents,
+        initial.powers.map((e) => -e * power),
+      );
       const constant = divide(ONE, initial.numerator.asConstant()!);
       for (let e = 0; e < power; e++) p = p.scale(constant);
     }
     if (p.isZero()) return this.zero;
-    if (isConstant(p)) return { numerator: p.equals(Polynomial.one) ? Polynomial.one : p, powers: exponents, value };
+    if (isConstant(p))
+      return { numerator: p.equals(Polynomial.one) ? Polynomial.one : p, powers: exponents, value };
     const add = (u: number, e: number) => {
       added ??= exponents.slice();
       while (added.length <= u) added.push(0);
@@ -174,7 +178,10 @@ export class Localisation {
         out += [...this.units[u]!.numerators.keys()][0]! * BigInt(e);
       }
       if (out !== 0n)
-        p = Polynomial.fromIntegers([...p.numerators].map(([m, c]) => [m - out, c] as const), p.denominator);
+        p = Polynomial.fromIntegers(
+          [...p.numerators].map(([m, c]) => [m - out, c] as const),
+          p.denominator,
+        );
     }
     let sample = p.size > 1 ? integerValue(p) : 0n;
     for (let u = 0; u < this.units.length && p.size > 1; u++) {
@@ -222,7 +229,9 @@ function valueOfMonomial(monomial: Monomial): bigint {
   if (known !== undefined) return known;
   let value = 1n;
   for (const v of variablesOf(Polynomial.fromIntegers([[monomial, 1n]])))
-    value *= (COORDINATES[v % COORDINATES.length]! + BigInt(Math.floor(v / COORDINATES.length))) ** BigInt(powerIn(monomial, v));
+    value *=
+      (COORDINATES[v % COORDINATES.length]! + BigInt(Math.floor(v / COORDINATES.length))) **
+      BigInt(powerIn(monomial, v));
   if (MONOMIAL_VALUES.size > 100_000) MONOMIAL_VALUES.clear();
   MONOMIAL_VALUES.set(monomial, value);
   return value;

@@ -193,6 +193,7 @@ function variableOf(p: Polynomial): { variable: number; positive: boolean } | un
   if (p.size !== 1) return undefined;
   const [[monomial, value]] = [...p.numerators] as [[bigint, bigint]];
   for (let v = 0; v < 64; v++)
-    if (monomial === [...Polynomial.variable(v).numerators.keys()][0]) return { variable: v, positive: value > 0n };
+    if (monomial === [...Polynomial.variable(v).numerators.keys()][0])
+      return { variable: v, positive: value > 0n };
   return undefined;
 }

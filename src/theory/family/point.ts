@@ -11,7 +11,8 @@ export function residueAt(p: Polynomial, point: readonly number[], field: Field)
   const variables = variablesOf(p);
   for (const [monomial, value] of p.numerators) {
     let term = field.residue(value);
-    for (const v of variables) for (let e = powerIn(monomial, v); e > 0; e--) term = field.multiply(term, point[v]!);
+    for (const v of variables)
+      for (let e = powerIn(monomial, v); e > 0; e--) term = field.multiply(term, point[v]!);
     sum = (sum + term) % field.p;
   }
   return p.denominator === 1n ? sum : field.multiply(sum, field.inverse(field.residue(p.denominator)));
@@ -116,7 +117,10 @@ export function rationalPoint(where: Case, parameters: number, random: () => num
     const height = 3 + Math.floor(attempt / 10);
     const draw = () => {
       const n = 1 + Math.floor(random() * height);
-      return rational(BigInt(random() < 0.4 ? -n : n), BigInt(random() < 0.6 ? 1 : 1 + Math.floor(random() * 3)));
+      return rational(
+        BigInt(random() < 0.4 ? -n : n),
+        BigInt(random() < 0.6 ? 1 : 1 + Math.floor(random() * 3)),
+      );
     };
     const free = Array.from({ length: parameters }, draw);
     for (const { variable } of where.solved) free[variable] = rational(0n);
