@@ -98,37 +98,49 @@ export function pass(
   const table = new TermTable(both ? 2 * planes : planes, 8 * q.coefficients.length);
   const cellBits = 2 * chain.cell;
   const count = q.coefficients.length;
+  // Products are written out: a pair of halves returned from a function would be an object for each of some 10⁸ outputs.
+  const mask = MASK;
   for (let i = 0; i < count; i++) {
     if ((i & 0xfff) === 0) visit(i / count);
     const [low, high] = shiftUp(q.low[i]!, q.high[i]!, reach * cellBits);
-    for (const term of terms)
+    for (const term of terms) {
+      const { word, sign: signs, h: own, weighted, shift } = term;
+      const windowMask = 2 ** (2 * term.spins) - 1;
       for (let at = reach - term.range + 1; at < reach + q.range; at++) {
         const offset = at * cellBits;
-        const window = windowAt(low, high, offset) & (2 ** (2 * term.spins) - 1);
-        const sign = term.sign === undefined ? signOf(term.word, window) : term.sign[window]!;
+        const window =
+          (offset >= BITS
+            ? high >>> (offset - BITS)
+            : offset === 0
+              ? low
+              : ((low >>> offset) | (high << (BITS - offset))) & mask) & windowMask;
+        const sign = signs === undefined ? signOf(word, window) : signs[window]!;
         if (sign === 0) continue;
-        let [l, h] = flip(low, high, term.word, offset);
-        const first = Math.floor(firstBit(l, h) / cellBits);
-        const down = first * cellBits;
-        if (down > 0) {
-          if (down >= BITS) {
-            l = h >>> (down - BITS);
-            h = 0;
-          } else {
-            l = (l >>> down) | ((h << (BITS - down)) & MASK);
-            h >>>= down;
-          }
+        let l = offset >= BITS ? low : low ^ ((word << offset) & mask);
+        let h =
+          offset >= BITS
+            ? high ^ ((word << (offset - BITS)) & mask)
+            : offset === 0
+              ? high
+              : high ^ (word >>> (BITS - offset));
+        const bit = l !== 0 ? 31 - Math.clz32(l & -l) : BITS + 31 - Math.clz32(h & -h);
+        const down = bit - (bit % cellBits);
+        if (down >= BITS) {
+          l = h >>> (down - BITS);
+          h = 0;
+        } else if (down > 0) {
+          l = (l >>> down) | ((h << (BITS - down)) & mask);
+          h >>>= down;
         }
         const slot = table.slot(l, h);
         const values = table.values;
-        const weight = sign * (term.weighted * (at - first) + term.shift);
-        const plain = sign * term.h;
-        for (let p = 0; p < planes; p++) {
-          const c = limbs[p]![i]!;
-          values[slot + p]! += plain * c;
-          if (both) values[slot + planes + p]! += weight * c;
-        }
+        const plain = sign * own;
+        for (let p = 0; p < planes; p++) values[slot + p]! += plain * limbs[p]![i]!;
+        if (!both) continue;
+        const weight = sign * (weighted * (at - down / cellBits) + shift);
+        for (let p = 0; p < planes; p++) values[slot + planes + p]! += weight * limbs[p]![i]!;
       }
+    }
   }
   return read(table, planes, both, limbs.base, q.range + reach, chain);
 }
@@ -241,18 +253,4 @@ function shiftUp(low: number, high: number, bits: number): [low: number, high: n
   if (bits === 0) return [low, high];
   if (bits >= BITS) return [0, (low << (bits - BITS)) & MASK];
   return [(low << bits) & MASK, ((high << bits) | (low >>> (BITS - bits))) & MASK];
-}
-
-function windowAt(low: number, high: number, offset: number): number {
-  if (offset >= BITS) return high >>> (offset - BITS);
-  return offset === 0 ? low : ((low >>> offset) | (high << (BITS - offset))) & MASK;
-}
-
-function flip(low: number, high: number, word: number, offset: number): [low: number, high: number] {
-  const [l, h] = offset === 0 ? [word, 0] : shiftUp(word, 0, offset);
-  return [low ^ l, high ^ h];
-}
-
-function firstBit(low: number, high: number): number {
-  return low !== 0 ? 31 - Math.clz32(low & -low) : BITS + 31 - Math.clz32(high & -high);
 }

@@ -1,6 +1,6 @@
 /**
  * Chains that are bilinear in Majorana operators: two charges of every range k ≥ 2, by an argument for all ranges at once
- * (`docs/theory.md`, lemma 14), no ladder needed.
+ * (`docs/theory.md`, lemma 9), no ladder needed.
  */
 import type { BondsAndFields } from './decompose.ts';
 

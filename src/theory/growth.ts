@@ -87,7 +87,7 @@ export class CellGrowth {
     );
   }
 
-  /** α(f) and β(f) in O_4, by the commutators of theorem 7. */
+  /** α(f) and β(f) in O_4, by section 2. */
   inner(f: Operator): { alpha: Operator; beta: Operator } {
     const f3 = this.right(f, 2);
     const f4 = this.left(f3);

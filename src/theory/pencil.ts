@@ -3,7 +3,7 @@
  *
  * Whatever the growth at the two ends of a string is made of (whole cells in `growth.ts`, half steps in `half-steps.ts`), the
  * theorem has one form: a charge of length t + t₀ with top part f exists only if `α(f) + t β(f)` lies in the image of growth.
- * See `docs/theory.md`, theorems 7 and 12.
+ * See `docs/theory.md`, theorems 5 and 8.
  */
 import { diagonalForm } from '../linear/diagonal.ts';
 import { integerRoots, univariateOf } from '../linear/univariate.ts';
