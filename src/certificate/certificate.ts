@@ -2,7 +2,6 @@
 import { CancelledError, LimitError, VerificationError } from '../errors.ts';
 import { type Field, PRIME_BOUND, primeField, primesBelow } from '../linear/field.ts';
 import type { SearchResult } from '../search/result.ts';
-import { MAX_SPINS } from '../search/sweep.ts';
 import { independentRows, tooLarge } from './core.ts';
 import { documentText, type Evidence } from './document.ts';
 import { Replay } from './replay.ts';
@@ -19,15 +18,26 @@ const MAX_ATTEMPTS = 12;
 /** Outputs between two reports of progress. */
 const CHUNK = 2 ** 16;
 
-/** Visits of one layer of outputs, and of all layers, before what is left goes to the elimination. */
-const MAX_VISITS = 2;
-const MAX_PASSES = 2;
+/** Sweeps of one layer in a row, passes over all layers, and sweeps in all (a checker bounds them). */
+const MAX_VISITS = 8;
+const MAX_PASSES = 24;
+const MAX_SWEEPS = 120;
+
+/** Outputs that all sweeps together may visit before none is repeated: half of what the checker allows. */
+const MAX_VISITED = 2 ** 30;
+
+/** Longest candidate, in spins: the checker takes no longer ones. */
+const MAX_SPINS = 13;
+
+/**
+ * A layer is swept again while at least one output in so many is open. A sweep costs a checker every output of the layer; it saves
+ * the elimination rows, whose cost grows with their square and more (mixed-field Ising, range 10: 6,697 classes left after two
+ * passes over everything, 274 by this rule, for the same number of visits).
+ */
+const WORTH_A_SWEEP = 256;
 
 /** Rows that may be left open at any time: each is a number in memory, and three rows to one are listed in the end. */
 const MAX_OPEN = 2 ** 23;
-
-/** Classes left that are worth a second pass over all layers. */
-const LARGE_CORE = 512;
 
 /** Bytes that the writing of a certificate, and its check, will need at the peak: two 32-bit words a packed string. */
 export function certificateBytes({
@@ -75,7 +85,9 @@ export function certificateNow(result: SearchResult): string {
 function* certifying(result: SearchResult): Generator<number, string> {
   const spins = result.hamiltonian.chain.cell * result.range;
   if (spins > MAX_SPINS)
-    throw new LimitError(`certificate: ${spins} spins; arrays hold strings of up to ${MAX_SPINS}`);
+    throw new LimitError(
+      `certificate: candidates of ${spins} spins; the checker takes up to ${MAX_SPINS}, so a smaller range is needed`,
+    );
   let attempts = 0;
   for (const p of primesBelow(result.primes[0]! + 1)) {
     if (attempts++ === MAX_ATTEMPTS) break;
@@ -98,11 +110,21 @@ function* evidenceModulo(result: SearchResult, field: Field): Generator<number, 
   /** By range of the outputs: rows that still tie three classes or more. */
   const open = new Map<number, readonly number[]>();
   let openCount = 0;
+  let visited = 0;
   for (let pass = 0; pass < MAX_PASSES; pass++) {
+    const atStart = replay.uses;
     for (let cells = layers; cells >= 1; cells--)
       for (let visit = 0; visit < MAX_VISITS; visit++) {
         const before = replay.uses;
         const known = open.get(cells);
+        if (
+          known !== undefined &&
+          (known.length * WORTH_A_SWEEP < unit ** cells ||
+            sweeps.length >= MAX_SWEEPS ||
+            visited + unit ** cells > MAX_VISITED)
+        )
+          break;
+        visited += unit ** cells;
         const left: number[] = [];
         const first = known === undefined ? unit ** (cells - 1) : 0;
         const end = known === undefined ? unit ** cells : known.length;
@@ -121,7 +143,7 @@ function* evidenceModulo(result: SearchResult, field: Field): Generator<number, 
         if (replay.uses > before) sweeps.push([cells, replay.uses - before]);
         if (replay.uses === before || left.length === 0) break;
       }
-    if (wanted - replay.uses < LARGE_CORE) break;
+    if (replay.uses === atStart) break;
   }
   const core = replay.core(open);
   const steps = independentRows(core.rows, core.columns, wanted - replay.uses, field);
@@ -131,7 +153,7 @@ function* evidenceModulo(result: SearchResult, field: Field): Generator<number, 
       yield 0.8 + 0.2 * step.value;
       continue;
     }
-    if (replay.uses + step.value.length < wanted) return undefined;
+    if (replay.uses + step.value.length !== wanted) return undefined;
     return { prime: field.p, sweeps, pivots: step.value.map((i) => core.outputs[i]!) };
   }
 }

@@ -3,9 +3,11 @@ import { createHash } from 'node:crypto';
 import { readFileSync } from 'node:fs';
 import { describe, expect, test } from 'vitest';
 import { certificateNow, certificateOf } from '../../src/certificate/certificate.ts';
+import { independentRows } from '../../src/certificate/core.ts';
 import { VERSION } from '../../src/certificate/version.ts';
 import { checkNow } from '../../src/check/check.ts';
-import { CancelledError } from '../../src/errors.ts';
+import { CancelledError, LimitError, VerificationError } from '../../src/errors.ts';
+import { primeField } from '../../src/linear/field.ts';
 import { CATALOGUE, catalogueModel } from '../../src/model/catalogue/index.ts';
 import { parseModel } from '../../src/model/formula.ts';
 import { searchNow } from '../../src/search/search.ts';
@@ -44,6 +46,17 @@ test('the same result gives the same bytes, in one go or giving way', async () =
 test('a signal stops the writing', async () => {
   const result = searchNow(parseModel('XX + YY'), { range: 3 });
   await expect(certificateOf(result, { signal: AbortSignal.abort() })).rejects.toThrow(CancelledError);
+});
+
+test('refuses at once what no checker takes', () => {
+  const result = searchNow(parseModel('XX + YY'), { range: 3 });
+  expect(() => certificateNow({ ...result, range: 14 })).toThrow(LimitError);
+  expect(() => independentRows([], 70_000, 70_000, primeField(65_537)).next()).toThrow(LimitError);
+});
+
+test('a result that is wrong gets no certificate', () => {
+  const result = searchNow(parseModel('XX + YY'), { range: 3 });
+  expect(() => certificateNow({ ...result, charges: result.charges.slice(1) })).toThrow(VerificationError);
 });
 
 test('the version is that of the package', () => {
