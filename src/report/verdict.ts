@@ -9,6 +9,7 @@ export const CAUTIONS = [
   'Absence of local charges supports thermalisation or chaos; by itself it proves neither.',
 ];
 
+/** The verdict in one sentence. It says what was found and that nothing is missing; `CAUTIONS` and `validityOf` belong beside it. */
 export function verdictOf({ charges, range, expansionOfH }: SearchResult): string {
   if (charges.length === 0) return `No charge of range ≤ ${range} exists.`;
   if (charges.length === 1 && expansionOfH !== null)

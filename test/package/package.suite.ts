@@ -1,11 +1,12 @@
 /** The package as its users get it: packed, installed without a network into empty projects, bundled for a page. */
 import { execFileSync } from 'node:child_process';
-import { mkdirSync, mkdtempSync, readdirSync, rmSync, writeFileSync } from 'node:fs';
+import { mkdirSync, mkdtempSync, readdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join, resolve } from 'node:path';
 import { pathToFileURL } from 'node:url';
 import { build } from 'esbuild';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { apiReference } from '../../src/cli/build/api.ts';
 import { HAS_CHROMIUM, launch } from '../support/chromium.ts';
 
 const ROOT = resolve(import.meta.dirname, '../..');
@@ -52,6 +53,24 @@ beforeAll(() => {
   );
 });
 afterAll(() => rmSync(scratch, { recursive: true, force: true }));
+
+describe('the API reference', () => {
+  it('is that of the source; npm run docs:api writes it', async () => {
+    const written = execFileSync(
+      join(ROOT, 'node_modules/.bin/biome'),
+      ['format', '--stdin-file-path=docs/api.md'],
+      {
+        cwd: ROOT,
+        encoding: 'utf8',
+        input: await apiReference(join(ROOT, 'dist')),
+      },
+    );
+    expect(readFileSync(join(ROOT, 'docs/api.md'), 'utf8')).toBe(written);
+    expect(written.match(/^### /gm)!.length).toBeGreaterThanOrEqual(
+      Object.keys(await import('../../src/index.ts')).length,
+    );
+  });
+});
 
 describe('the package', () => {
   it('is small and holds what it should', () => {
