@@ -21,6 +21,7 @@ export {
   wordFromText,
 } from './algebra/word.ts';
 export {
+  assertCertifiable,
   type CertificateOptions,
   certificateBytes,
   certificateNow,

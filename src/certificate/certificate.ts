@@ -1,6 +1,7 @@
 /** From the result of a search to a certificate: a text from which anyone can check the result without trusting the search. */
 import { CancelledError, LimitError, VerificationError } from '../errors.ts';
 import { type Field, PRIME_BOUND, primeField, primesBelow } from '../linear/field.ts';
+import type { Hamiltonian } from '../model/hamiltonian.ts';
 import type { SearchResult } from '../search/result.ts';
 import { independentRows, tooLarge } from './core.ts';
 import { documentText, type Evidence } from './document.ts';
@@ -26,8 +27,9 @@ const MAX_SWEEPS = 120;
 /** Outputs that all sweeps together may visit before none is repeated: half of what the checker allows. */
 const MAX_VISITED = 2 ** 30;
 
-/** Longest candidate, in spins: the checker takes no longer ones. */
+/** Longest candidate, and longest string that a row touches, in spins: the checker takes no longer ones. */
 const MAX_SPINS = 13;
+const MAX_PACKED = 16;
 
 /**
  * A layer is swept again while at least one output in so many is open. A sweep costs a checker every output of the layer; it saves
@@ -38,6 +40,23 @@ const WORTH_A_SWEEP = 256;
 
 /** Rows that may be left open at any time: each is a number in memory, and three rows to one are listed in the end. */
 const MAX_OPEN = 2 ** 23;
+
+/**
+ * Known before a search starts. A core that turns out too large is known only afterwards.
+ *
+ * @throws LimitError where no certificate can be written, or none that the checker takes
+ */
+export function assertCertifiable(h: Hamiltonian, range: number): void {
+  const spins = h.chain.cell * range;
+  if (spins > MAX_SPINS)
+    throw new LimitError(
+      `certificate: candidates of ${spins} spins; the checker takes up to ${MAX_SPINS}, so a smaller range is needed`,
+    );
+  if (h.chain.cell * (range + 2 * h.range - 2) > MAX_PACKED)
+    throw new LimitError(
+      `certificate: range ${range} with cells of ${h.chain.cell} spins and an interaction of ${h.range} cells needs strings of more than ${MAX_PACKED} spins`,
+    );
+}
 
 /** Bytes that the writing of a certificate, and its check, will need at the peak: two 32-bit words a packed string. */
 export function certificateBytes({
@@ -83,11 +102,7 @@ export function certificateNow(result: SearchResult): string {
 
 /** Yields the share of the work done. */
 function* certifying(result: SearchResult): Generator<number, string> {
-  const spins = result.hamiltonian.chain.cell * result.range;
-  if (spins > MAX_SPINS)
-    throw new LimitError(
-      `certificate: candidates of ${spins} spins; the checker takes up to ${MAX_SPINS}, so a smaller range is needed`,
-    );
+  assertCertifiable(result.hamiltonian, result.range);
   let attempts = 0;
   for (const p of primesBelow(result.primes[0]! + 1)) {
     if (attempts++ === MAX_ATTEMPTS) break;

@@ -4,15 +4,11 @@
  *
  * Cost: a gather a swept output. Memory: 8 bytes a packed candidate.
  */
-import { LimitError } from '../errors.ts';
 import type { Field } from '../linear/field.ts';
 import { WeightedForest } from '../linear/forest.ts';
 import type { SparseVector } from '../linear/sparse.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
 import { type WindowTable, windowTable } from '../search/windows.ts';
-
-/** Bits of the longest string that a row touches: a term sticks out on the left of the longest output. */
-const MAX_BITS = 32;
 
 export class Replay {
   readonly #table: WindowTable;
@@ -25,7 +21,7 @@ export class Replay {
   readonly #classes: Uint32Array;
   readonly #factors: Uint32Array;
 
-  /** @throws LimitError where strings do not fit the packed form */
+  /** @param range n(range + 2r − 2) ≤ 16: a term that sticks out on the left of the longest output still fits 32 bits */
   constructor(
     readonly h: Hamiltonian,
     readonly range: number,
@@ -33,10 +29,6 @@ export class Replay {
   ) {
     this.#table = windowTable(h);
     const { cellBits, values } = this.#table;
-    if (cellBits * (range + 2 * h.range - 2) > MAX_BITS)
-      throw new LimitError(
-        `certificate: range ${range} with cells of ${h.chain.cell} and an interaction of ${h.range} cells needs strings of more than ${MAX_BITS / 2} spins`,
-      );
     this.#limit = 2 ** (cellBits * range);
     this.#reach = h.range;
     // "Nothing in the first cell, X in the second" is no representative: its place is the zero root's.

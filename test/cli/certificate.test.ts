@@ -88,13 +88,14 @@ test('holdfast cite: statement, rings, id and command; nothing for a rejected on
 
 test('a certificate that cannot be written is a failure, and leaves nothing behind', () => {
   const before = readdirSync(folder);
-  const { status, stderr } = holdfast(
+  const { status, stdout, stderr } = holdfast(
     'search',
     'XX',
     '--range=2',
     `--certificate=${join(folder, 'no/where.json')}`,
   );
   expect(status).toBe(1);
+  expect(stdout).toContain('Q1');
   expect(stderr).toContain('no/where.json');
   expect(readdirSync(folder)).toEqual(before);
 });

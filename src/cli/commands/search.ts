@@ -1,5 +1,5 @@
 /** `holdfast search`: all charges up to a range. */
-import { certificateOf } from '../../certificate/certificate.ts';
+import { assertCertifiable, certificateOf } from '../../certificate/certificate.ts';
 import { checkNow } from '../../check/check.ts';
 import { InputError, LimitError, show } from '../../errors.ts';
 import { resultToJson } from '../../report/json.ts';
@@ -60,7 +60,9 @@ Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
     const memory = gigabytesOption(input);
     if (input.values['json'] === true && input.values['latex'] === true)
       throw new InputError('command line', '--json or --latex', 'both');
+    const { certificate, report, picture } = input.values as Readonly<Record<string, string | undefined>>;
     const model = await modelFromOptions(input);
+    if (certificate !== undefined) assertCertifiable(model, range);
     const checkpoint = input.values['checkpoint'] as string | undefined;
     const line = progressLine(input);
     const result = await searchInBackground(model, {
@@ -70,7 +72,8 @@ Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
       ...(memory === undefined ? {} : { memory }),
       ...(checkpoint === undefined ? {} : { checkpoint }),
     }).finally(line.clear);
-    const { certificate, report, picture } = input.values as Readonly<Record<string, string | undefined>>;
+    // The answer first: a file that cannot be written then loses nothing.
+    input.out(printed(result, input));
     const proof =
       certificate === undefined && report === undefined ? undefined : await proofOf(result, input);
     if (certificate !== undefined) {
@@ -81,7 +84,6 @@ Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
       await writeFileWhole('--report', report, [reportPage(result, carried(proof))], input.signal);
     if (picture !== undefined)
       await writeFileWhole('--picture', picture, [pictureOfResult(result)], input.signal);
-    input.out(printed(result, input));
     return Exit.done;
   },
 };
