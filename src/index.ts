@@ -1,5 +1,6 @@
 /** Every public name, layer by layer. What is not here may change without notice. */
 
+export { type Cyclotomic, CyclotomicField } from './algebra/cyclotomic.ts';
 export { Operator } from './algebra/operator.ts';
 export { Polynomial } from './algebra/polynomial.ts';
 export {
@@ -32,6 +33,7 @@ export { VERSION } from './certificate/version.ts';
 export { type CheckOptions, check, checkNow, type Verdict } from './check/check.ts';
 export { CancelledError, HoldfastError, InputError, LimitError, VerificationError } from './errors.ts';
 export { Chain, MAX_CELL, type Reflection } from './lattice/chain.ts';
+export { Box, type Extent, INFINITE, Lattice, type LatticeSite } from './lattice/lattice.ts';
 export type {
   CatalogueEntry,
   FamilyEntry,
@@ -51,6 +53,15 @@ export {
   parseSites,
 } from './model/formula.ts';
 export { type Hamiltonian, hamiltonianOf } from './model/hamiltonian.ts';
+export { chainModel, type LatticeModel, latticeModel, type PlacedStrings } from './model/lattice-model.ts';
+export {
+  type Bond,
+  bondModel,
+  type Couplings,
+  LATTICES,
+  type LatticeName,
+  type LatticeShape,
+} from './model/lattices.ts';
 export {
   familyFromDocument,
   jsonFromModel,
@@ -106,6 +117,16 @@ export { printCharge, printDensity, printResult, type TextOptions } from './repo
 export { CAUTIONS, verdictOf } from './report/verdict.ts';
 export { type BackgroundOptions, search } from './search/background.ts';
 export { type Estimate, estimate } from './search/estimate.ts';
+export { type RealDensity, realForms } from './search/lattice/real-form.ts';
+export type { LatticeCharge, LatticeResult } from './search/lattice/result.ts';
+export {
+  estimateLattice,
+  type LatticeEstimate,
+  type LatticeOptions,
+  type LatticeProgress,
+  searchLatticeNow,
+} from './search/lattice/search.ts';
+export type { Translations } from './search/lattice/space.ts';
 export { EquationMatrix, type MatrixSize } from './search/matrix.ts';
 export type { Charge, SearchResult } from './search/result.ts';
 export { candidateCount, leadingWord, type SearchOptions, searchNow } from './search/search.ts';
