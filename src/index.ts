@@ -128,7 +128,7 @@ export {
 } from './search/lattice/search.ts';
 export type { Translations } from './search/lattice/space.ts';
 export { EquationMatrix, type MatrixSize } from './search/matrix.ts';
-export type { Charge, SearchResult } from './search/result.ts';
+export type { Charge, Method, SearchResult } from './search/result.ts';
 export { candidateCount, leadingWord, type SearchOptions, searchNow } from './search/search.ts';
 export type { OnProgress, Progress } from './search/sweep.ts';
 export type { Citation, PublishedTheorem } from './theory/citations.ts';

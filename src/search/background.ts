@@ -7,7 +7,7 @@ import { CancelledError, InputError, LimitError, VerificationError } from '../er
 import type { Hamiltonian } from '../model/hamiltonian.ts';
 import { estimate } from './estimate.ts';
 import type { SearchResult } from './result.ts';
-import type { SearchOptions } from './search.ts';
+import { methodFor, type SearchOptions } from './search.ts';
 import { plainModel, resultOf } from './transfer.ts';
 import type { Answer, Task } from './worker.ts';
 
@@ -26,8 +26,10 @@ export interface BackgroundOptions extends Omit<SearchOptions, 'store'> {
  */
 export async function search(h: Hamiltonian, options: BackgroundOptions): Promise<SearchResult> {
   const { range, signal, onProgress, memory = freeMemory(), primesBelow, checkpoint } = options;
-  const need = estimate(h, range);
-  if (need.bytes > memory)
+  const method = methodFor(h, range, options.method);
+  // What growth needs follows the answer, which nobody knows beforehand; the exhaustive search says it to the byte.
+  const need = method === 'growth' ? undefined : estimate(h, range);
+  if (need !== undefined && need.bytes > memory)
     throw new LimitError(
       `search: range ${range} has ${need.candidates.toLocaleString('en')} candidates and needs about ${gigabytes(need.bytes)}; ` +
         `${gigabytes(memory)} may be used. Give a larger memory limit to try all the same`,
@@ -36,6 +38,7 @@ export async function search(h: Hamiltonian, options: BackgroundOptions): Promis
   const task: Task = {
     model: plainModel(h),
     range,
+    method,
     ...(primesBelow === undefined ? {} : { primesBelow }),
     ...(checkpoint === undefined ? {} : { checkpoint }),
   };

@@ -13,6 +13,9 @@ export interface Charge {
   readonly density: Operator;
 }
 
+/** How a search found the candidates that may be non-zero; the answer is the same. */
+export type Method = 'exhaustive' | 'growth';
+
 /** All charges of range ≤ `range`: a basis, and the numbers that prove it complete. */
 export interface SearchResult {
   readonly hamiltonian: Hamiltonian;
@@ -25,6 +28,7 @@ export interface SearchResult {
   readonly expansionOfH: readonly Rational[] | null;
   /** The statement holds on the infinite chain and on every ring of at least so many cells. */
   readonly minimumCells: number;
+  readonly method: Method;
   /** The first one carries the upper bound; all of them together the coefficients. */
   readonly primes: readonly number[];
   readonly candidates: number;

@@ -7,14 +7,15 @@
 import { Operator } from '../algebra/operator.ts';
 import { type Rational, rational } from '../algebra/rational.ts';
 import type { Word } from '../algebra/word.ts';
-import { InputError, show, VerificationError } from '../errors.ts';
+import { InputError, LimitError, show, VerificationError } from '../errors.ts';
 import { type Field, PRIME_BOUND, primeField, primesBelow } from '../linear/field.ts';
 import type { SparseVector } from '../linear/sparse.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
 import { assemble, type RestrictedSystem } from './assemble.ts';
 import { type IntegerVector, liftCharges, type Mirror, type ModularBasis, modularBasis } from './charges.ts';
-import { type Charge, resultFrom, type SearchResult } from './result.ts';
-import { aliveStrings, type OnProgress, type SnapshotStore } from './sweep.ts';
+import { livingByGrowth } from './growth.ts';
+import { type Charge, type Method, resultFrom, type SearchResult } from './result.ts';
+import { aliveStrings, MAX_SPINS, type OnProgress, type SnapshotStore } from './sweep.ts';
 
 export interface SearchOptions {
   /** Largest range of the charges, in cells. */
@@ -23,6 +24,11 @@ export interface SearchOptions {
   readonly onProgress?: OnProgress;
   /** Primes are taken from below this bound, falling; the answer does not depend on it. */
   readonly primesBelow?: number;
+  /**
+   * How the candidates that may be non-zero are found. `exhaustive` visits all of them; `growth` follows the strings that stay
+   * alive, for injective nearest-neighbour interactions. Default: exhaustive up to `MAX_SPINS` spins, growth beyond.
+   */
+  readonly method?: Method;
   /** Keeps finished layers, so that a search that was killed goes on from the last one. */
   readonly store?: SnapshotStore;
 }
@@ -46,11 +52,21 @@ export function searchNow(h: Hamiltonian, options: SearchOptions): SearchResult 
   const candidates = candidateCount(h.chain.cell, range);
   const solving = (done: number) => onProgress({ stage: 'solve', layer: 0, done, candidates });
   const fields = fieldsBelow(bound);
+  const method = methodFor(h, range, options.method);
+  let refused = false;
   for (let attempt = 0; attempt < MAX_ATTEMPTS; attempt++) {
     const next = fields.next();
     if (next.done) break;
     const field = next.value;
-    const alive = assemble(h, aliveStrings(h, range, field, onProgress, store), range, solving);
+    const strings =
+      method === 'growth'
+        ? livingByGrowth(h, range, field, onProgress)
+        : aliveStrings(h, range, field, onProgress, store);
+    if (strings === undefined) {
+      refused = true;
+      continue;
+    }
+    const alive = assemble(h, strings, range, solving);
     const found = modularBasis(alive.matrix, mirrorOf(h, alive.strings), field);
     solving(0.5);
     const { system, basis } = restricted(h, alive, found, range);
@@ -70,14 +86,24 @@ export function searchNow(h: Hamiltonian, options: SearchOptions): SearchResult 
       charges,
       expansionOfH: h.range > range ? null : expansion(h, charges),
       minimumCells: 2 * range + 2 * h.range - 3,
+      method,
       primes: Object.freeze(lifted.primes),
       candidates,
       milliseconds: performance.now() - started,
     });
   }
+  if (refused)
+    throw new LimitError(
+      `search: above ${MAX_SPINS} spins, range × cell, the search follows growth and needs an injective nearest-neighbour interaction; this one is not`,
+    );
   throw new VerificationError(
     `search: no prime below ${bound} gave matching bounds in ${MAX_ATTEMPTS} attempts`,
   );
+}
+
+/** The method of a search when the caller leaves it open. */
+export function methodFor(h: Hamiltonian, range: number, method?: Method): Method {
+  return method ?? (h.chain.cell * range > MAX_SPINS ? 'growth' : 'exhaustive');
 }
 
 /** Number of representatives of range 1 … `range`: 4^{nk} − 4^{n(k−1)}. */

@@ -2,6 +2,7 @@
 import { parentPort, workerData } from 'node:worker_threads';
 import { HoldfastError, InputError } from '../errors.ts';
 import { checkpointIn } from './checkpoint.ts';
+import type { Method } from './result.ts';
 import { searchNow } from './search.ts';
 import type { Progress } from './sweep.ts';
 import { modelOf, type PlainModel, type PlainResult, plainResult } from './transfer.ts';
@@ -9,6 +10,7 @@ import { modelOf, type PlainModel, type PlainResult, plainResult } from './trans
 export interface Task {
   readonly model: PlainModel;
   readonly range: number;
+  readonly method: Method;
   readonly primesBelow?: number;
   /** Folder that keeps finished layers. */
   readonly checkpoint?: string;

@@ -32,6 +32,8 @@ ${MODEL_HELP}
 Search:
   --range K             largest range, in cells
   --certificate FILE    writes the proof, for "holdfast check FILE"
+  --growth              follow the strings that stay alive instead of visiting every candidate: for injective
+                        nearest-neighbour interactions; taken by itself above 15 spins
   --checkpoint DIR      keeps finished layers there; the same search, started again, goes on from the last one
   --memory GB           refuse to start above so many gigabytes (default: what is free)
 
@@ -48,6 +50,7 @@ Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
     range: { type: 'string' },
     json: { type: 'boolean' },
     certificate: { type: 'string' },
+    growth: { type: 'boolean' },
     checkpoint: { type: 'string' },
     memory: { type: 'string' },
     unfold: { type: 'boolean' },
@@ -70,6 +73,7 @@ Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
       signal: input.signal,
       onProgress: line.show,
       ...(memory === undefined ? {} : { memory }),
+      ...(input.values['growth'] === true ? { method: 'growth' as const } : {}),
       ...(checkpoint === undefined ? {} : { checkpoint }),
     }).finally(line.clear);
     // The answer first: a file that cannot be written then loses nothing.
