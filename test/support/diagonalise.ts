@@ -140,3 +140,42 @@ export function eigenvalues(symmetric: readonly Float64Array[]): number[] {
     return (low + high) / 2;
   });
 }
+
+/**
+ * Σ over translates in one sector of ∏Z as a dense real symmetric matrix. Where entries are imaginary, the real form (Re, −Im; Im, Re) of
+ * twice the size, in which every eigenvalue occurs twice.
+ */
+export function sectorMatrix(density: Operator, cell: number, cells: number, parity: 1 | -1): Float64Array[] {
+  const states: number[] = [];
+  const place = new Map<number, number>();
+  for (let state = 0; state < 2 ** (cell * cells); state++) {
+    let ones = 0;
+    for (let rest = state; rest !== 0; rest &= rest - 1) ones++;
+    if ((ones & 1) === (parity === 1 ? 0 : 1)) place.set(state, states.push(state) - 1);
+  }
+  const words = [...density.numerators].map(([word, value]) => [textFromWord(word), value] as const);
+  const placed = onRing(words, cell, cells);
+  const n = states.length;
+  const double = placed.some(({ power }) => (power & 1) === 1);
+  const matrix = Array.from({ length: double ? 2 * n : n }, () => new Float64Array(double ? 2 * n : n));
+  for (const { flip, sign, power, coefficient } of placed)
+    for (const [column, state] of states.entries()) {
+      let ones = 0;
+      for (let rest = state & sign; rest !== 0; rest &= rest - 1) ones++;
+      const turns = (power + 2 * ones) & 3;
+      const value = Number(coefficient) / Number(density.denominator);
+      const row = place.get(state ^ flip)!;
+      const [re, im] = [
+        [1, 0],
+        [0, 1],
+        [-1, 0],
+        [0, -1],
+      ][turns]!.map((x) => x * value) as [number, number];
+      matrix[row]![column]! += re;
+      if (!double) continue;
+      matrix[row + n]![column + n]! += re;
+      matrix[row + n]![column]! += im;
+      matrix[row]![column + n]! -= im;
+    }
+  return matrix;
+}
