@@ -82,7 +82,16 @@ export {
   paritiesOf,
 } from './physics/charge-algebra.ts';
 export { type Current, currentOf, isContinuous, localCommutator, type Placed } from './physics/currents.ts';
+export {
+  type Axis,
+  bilinearCharges,
+  type Dispersion,
+  type FreeFermions,
+  freeFermions,
+  ringMatrix,
+} from './physics/free-fermions.ts';
 export { innerProduct } from './physics/inner-product.ts';
+export { Laurent, type LaurentMatrix } from './physics/laurent.ts';
 export { type MazurBound, mazurBounds, type OverlapOptions } from './physics/overlaps.ts';
 export {
   type Correction,
@@ -93,6 +102,15 @@ export {
   residual,
   smallestCorrection,
 } from './physics/residual.ts';
+export {
+  isStrictlyLocal,
+  type Label,
+  type LabelKind,
+  labelCharges,
+  type NamedSymmetries,
+  namedSymmetries,
+  staggeredCharges,
+} from './physics/symmetries.ts';
 export { boundPicture } from './report/bound-picture.ts';
 export { citation } from './report/citation.ts';
 export { decimalText } from './report/decimal.ts';

@@ -12,6 +12,7 @@ import { currents } from './commands/currents.ts';
 import { decide } from './commands/decide.ts';
 import { demo } from './commands/demo.ts';
 import { family } from './commands/family.ts';
+import { fermions } from './commands/fermions.ts';
 import { ladder } from './commands/ladder.ts';
 import { matrix } from './commands/matrix.ts';
 import { residual } from './commands/residual.ts';
@@ -26,6 +27,7 @@ const COMMANDS: readonly Command[] = [
   currents,
   algebra,
   bound,
+  fermions,
   check,
   cite,
   matrix,

@@ -249,8 +249,9 @@ export function bilinearCharges({ rotated, axes }: FreeFermions, range: number):
   const images = words.map((word) => chain.bracket(density, Operator.fromIntegers([[word, 1n]])));
   return relations(images).map((relation) => {
     const sum = Operator.fromTerms([...relation].map(([i, c]) => [words[i]!, c] as const));
-    const leading = words[Math.max(...relation.keys())]!;
-    return sum.primitive(leading).mapWords((word) => renamed(word, axes, -1));
+    const longest = chain.rangeOf(sum);
+    const [leading] = sum.filter((word) => chain.range(word) === longest).terms();
+    return sum.primitive(leading![0]).mapWords((word) => renamed(word, axes, -1));
   });
 }
 

@@ -1,6 +1,8 @@
 /** `holdfast algebra`: how the charges of a model relate. */
 import { textFromRational } from '../../algebra/rational.ts';
+import type { Hamiltonian } from '../../model/hamiltonian.ts';
 import { chargeAlgebra, type Sign } from '../../physics/charge-algebra.ts';
+import { labelCharges, type NamedSymmetries, namedSymmetries } from '../../physics/symmetries.ts';
 import { printDensity } from '../../report/text.ts';
 import { type Command, Exit } from '../command.ts';
 import { MODEL_HELP, MODEL_OPTIONS, modelFromOptions } from '../model-options.ts';
@@ -10,10 +12,10 @@ import { rangeOption } from './search.ts';
 
 export const algebra: Command = {
   name: 'algebra',
-  summary: 'commutators, inner products, parities and ladder of the charges',
+  summary: 'the charges named, their commutators, inner products, parities and ladder',
   help: `holdfast algebra FORMULA --range K
 
-For all charges of range up to K: which do not commute and what their commutator is; the Gram matrix under the infinite-temperature inner
+For all charges of range up to K: what each owes to symmetries; which do not commute and what their commutator is; the Gram matrix under the infinite-temperature inner
 product per cell (for Pauli strings the sum of products of coefficients) and orthogonal combinations; signs under reflection of
 all spins, under flips of all spins by X, Y, Z and under transposition (Y to -Y); and the ladder: i[B, Q] with the boost B.
 
@@ -32,10 +34,13 @@ Exit status: 0 answered, 1 a failure, 2 bad input.`,
     const model = await modelFromOptions(input);
     const found = await searchWithProgress(input, model, range);
     const { commutators, gram, orthogonal, norms, parities, derivatives } = chargeAlgebra(found);
+    const labels = labelCharges(found);
+    const symmetries = namedSymmetries(model);
     if (input.values['json'] === true) {
       const answer = {
         range,
-        charges: found.charges.map((q) => q.density),
+        charges: found.charges.map((q, i) => ({ density: q.density, label: labels[i] })),
+        symmetries,
         commutators: commutators.map((c) => ({
           a: c.a + 1,
           b: c.b + 1,
@@ -56,7 +61,11 @@ Exit status: 0 answered, 1 a failure, 2 bad input.`,
       input.out(`${JSON.stringify(answer, null, 2)}\n`);
       return Exit.done;
     }
-    const lines = found.charges.map((q, i) => `Q${i + 1} = Σ ${printDensity(model, q.density)}`);
+    const lines = found.charges.flatMap((q, i) => [
+      `Q${i + 1} = Σ ${printDensity(model, q.density)}`,
+      `     ${labels[i]!.text}${labels[i]!.multiplet === null ? '' : `; spin ${labels[i]!.multiplet} under SU(2)`}`,
+    ]);
+    lines.push('', ...symmetryLines(symmetries, model));
     lines.push(
       '',
       commutators.length === 0 ? 'All charges commute with each other.' : 'Commutators that do not vanish:',
@@ -102,6 +111,28 @@ Exit status: 0 answered, 1 a failure, 2 bad input.`,
     return Exit.done;
   },
 };
+
+function symmetryLines(
+  { su2, parities, staggered, staggeredRange }: NamedSymmetries,
+  model: Hamiltonian,
+): string[] {
+  const lines: string[] = [];
+  for (const spins of su2)
+    lines.push(
+      spins.length === model.chain.cell
+        ? 'SU(2) of the total spin.'
+        : `SU(2) of spin ${spins.join(', ')} of every cell.`,
+    );
+  lines.push(
+    parities.length === 0
+      ? 'No parity: H is even under no product of one word over all cells.'
+      : `Parities: H is even under the product over all cells of ${parities.join(', ')}.`,
+    staggered.length === 0
+      ? `No staggered charge (alternating sign from cell to cell) of range ≤ ${staggeredRange}.`
+      : `Staggered charges of range ≤ ${staggeredRange}: ${staggered.map((q) => `Σ (-1)^j (${printDensity(model, q)})`).join(', ')}`,
+  );
+  return lines;
+}
 
 function signText(sign: Sign): string {
   return sign === null ? '.' : sign === 1 ? '+' : '-';
