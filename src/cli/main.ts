@@ -8,6 +8,7 @@ import { algebra } from './commands/algebra.ts';
 import { bound } from './commands/bound.ts';
 import { check } from './commands/check.ts';
 import { cite } from './commands/cite.ts';
+import { completionCommand } from './commands/completion.ts';
 import { currents } from './commands/currents.ts';
 import { decide } from './commands/decide.ts';
 import { demo } from './commands/demo.ts';
@@ -31,20 +32,27 @@ const COMMANDS: readonly Command[] = [
   check,
   cite,
   matrix,
+  completionCommand(() => COMMANDS),
   demo,
 ];
 
 const USAGE = `holdfast finds all local conserved quantities of a spin chain up to a range, exactly, or proves that there are none.
 
-  holdfast COMMAND …            holdfast COMMAND --help            holdfast --version
+  holdfast search "XX + YY + 3 X" --range 6        what is conserved, up to a range
+  holdfast decide "ZZ + X + 1/2 Z"                 the same for every range at once
+  holdfast COMMAND --help                         options and examples of a command
+  holdfast --version
 
 ${COMMANDS.map((c) => `  ${c.name.padEnd(14)}${c.summary}`).join('\n')}
 
-Exit status: 0 complete answer, 1 failure or rejected, 2 bad input. Reasons go to stderr, answers to stdout.
+Exit status, for every command: 0 a complete answer, or accepted; 1 a failure: no complete answer, rejected, cancelled, out of memory;
+2 bad input. Answers go to standard output, reasons and progress to standard error. Colour appears on a terminal only, never says anything
+that the words do not, and NO_COLOR switches it off. Interrupt (Ctrl+C) cancels.
 `;
 
 export async function main(argv: readonly string[]): Promise<number> {
   const [name, ...rest] = argv;
+  if (name === 'help' && COMMANDS.some((c) => c.name === rest[0])) return main([rest[0]!, '--help']);
   if (name === undefined || name === '--help' || name === '-h' || name === 'help') {
     process.stdout.write(USAGE);
     return name === undefined ? Exit.input : Exit.done;

@@ -48,7 +48,7 @@ describe('examples', () => {
   });
 
   it.each(Object.entries(EXPECTED))('%s says what it should', (script, facts) => {
-    const printed = run('npx', ['tsx', script]);
+    const printed = run(process.execPath, ['--import', 'tsx', script]);
     for (const fact of facts) expect(printed).toMatch(fact);
   });
 });

@@ -13,6 +13,8 @@ export const cite: Command = {
 Checks a certificate and prints a BibTeX entry, and a paragraph with the statement, where it holds, what it does not show, the
 id and the command to check it. Nothing is printed for a certificate that is not accepted.
 
+  holdfast cite answer.json
+
 Exit status: 0 printed, 1 rejected or cancelled, 2 not a certificate.`,
   options: {},
   async run(input) {

@@ -16,7 +16,11 @@ export const demo: Command = {
   help: `holdfast demo
 
 Searches an invented device twice: without a field, where it has a charge of every range,
-and with a tilted field, where nothing but the energy is left.`,
+and with a tilted field, where nothing but the energy is left.
+
+  holdfast demo
+
+Exit status: 0 shown, 1 a failure.`,
   options: {},
   async run(input) {
     const cases = [

@@ -19,7 +19,7 @@ conditions, and finds all charges of range up to K in each, with polynomial coef
 
   holdfast family "ZZ + g X + h Z" --range 4
   holdfast family "Jx XX + Jy YY + Jz ZZ + hx X + hy Y + hz Z" --range 3
-  holdfast family "XX + YY + Jz ZZ + hx X + hz Z" --set hx=1 --range 3 --plot map.svg
+  holdfast family "XX + YY + Jz ZZ + hx X + hz Z" --set hx=1 --range 3 --picture map.svg
 
 ${MODEL_HELP}
 
@@ -27,7 +27,7 @@ Family:
   --range K             largest range, in cells
   --json                every case for machines, and nothing else, on standard output
   --latex               the table of answers as a LaTeX tabular
-  --plot FILE           two free parameters: a map of the curves and points where more charges appear, as SVG
+  --picture FILE        two free parameters: a map of the curves and points where more charges appear, as SVG
   --window A:B,C:D      what the map shows of the two parameters (-3:3,-3:3)
 
 Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
@@ -36,19 +36,19 @@ Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
     range: { type: 'string' },
     json: { type: 'boolean' },
     latex: { type: 'boolean' },
-    plot: { type: 'string' },
+    picture: { type: 'string' },
     window: { type: 'string' },
   },
   async run(input) {
     const range = rangeOption(input);
-    const plot = input.values['plot'] as string | undefined;
+    const plot = input.values['picture'] as string | undefined;
     const view = windowOption(input);
     if (input.values['json'] === true && input.values['latex'] === true)
       throw new InputError('command line', '--json or --latex', 'both');
     const members = await familyFromOptions(input);
     if (plot !== undefined && members.parameters.length !== 2)
       throw new InputError(
-        '--plot',
+        '--picture',
         'two free parameters (give the others a value with --set)',
         `${members.parameters.length}`,
       );
@@ -61,7 +61,7 @@ Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
     }).finally(() => {
       if (input.interactive) input.note('\r\u001b[2K');
     });
-    if (plot !== undefined) await writeFileWhole('--plot', plot, [plotFamily(result, view)], input.signal);
+    if (plot !== undefined) await writeFileWhole('--picture', plot, [plotFamily(result, view)], input.signal);
     if (input.values['json'] === true) input.out(`${JSON.stringify(familyJson(result), null, 2)}\n`);
     else input.out(input.values['latex'] === true ? familyLatex(result) : printFamily(result));
     return Exit.done;

@@ -22,20 +22,20 @@ Charges by repeated commutators with a boost operator, at a cost proportional to
 with H again, exactly, before it is shown. A model without such a ladder may still have charges: use search.
 
   holdfast ladder "2 XX + 3 YY + 5 ZZ" --range 8
-  holdfast ladder "2 XX + 3 YY + 5 ZZ" --range 14 --out charges.jsonl
+  holdfast ladder "2 XX + 3 YY + 5 ZZ" --range 14 --output charges.jsonl
 
 ${MODEL_HELP}
 
 Ladder:
   --range K             largest range, in cells
-  --out FILE            every term to a new file: a charge a line, {"range", "terms": [[word, coefficient], …]}
+  --output FILE         every term to a new file: a charge a line, {"range", "terms": [[word, coefficient], …]}
 
 Exit status: 0 the ladder reached its range, 1 there is none or a failure, 2 bad input.`,
-  options: { ...MODEL_OPTIONS, range: { type: 'string' }, out: { type: 'string' } },
+  options: { ...MODEL_OPTIONS, range: { type: 'string' }, output: { type: 'string' } },
   async run(input) {
     const range = rangeOption(input);
     if (range < 2) throw new InputError('--range', 'a whole number of cells, 2 or more', show(String(range)));
-    const file = input.values['out'] as string | undefined;
+    const file = input.values['output'] as string | undefined;
     const model = await modelFromOptions(input);
     const rungs = climb(model, {
       range,
@@ -77,7 +77,7 @@ async function openNew(file: string): Promise<ReturnType<typeof createWriteStrea
     await once(stream, 'open');
   } catch (error) {
     throw new InputError(
-      '--out',
+      '--output',
       'a new file in a folder that can be written',
       `${show(file)}: ${(error as Error).message}`,
     );
