@@ -28,6 +28,7 @@ export {
   certificateNow,
   certificateOf,
 } from './certificate/certificate.ts';
+export { type CertifiedResult, search, searchNow } from './certificate/certified.ts';
 export { statementOf } from './certificate/document.ts';
 export { VERSION } from './certificate/version.ts';
 export { type CheckOptions, check, checkNow, type Verdict } from './check/check.ts';
@@ -133,7 +134,7 @@ export { DISPLAY, type Display, displayOf, rich } from './report/rich.ts';
 export { type Story, type StoryLayer, type StoryStep, storyOf, tellLayer, tellStep } from './report/story.ts';
 export { printCharge, printDensity, printResult, type TextOptions } from './report/text.ts';
 export { CAUTIONS, verdictOf } from './report/verdict.ts';
-export { type BackgroundOptions, search } from './search/background.ts';
+export type { BackgroundOptions } from './search/background.ts';
 export { type Estimate, estimate } from './search/estimate.ts';
 export { type RealDensity, realForms } from './search/lattice/real-form.ts';
 export type { LatticeCharge, LatticeResult } from './search/lattice/result.ts';
@@ -147,7 +148,7 @@ export {
 export type { Translations } from './search/lattice/space.ts';
 export { EquationMatrix, type MatrixSize } from './search/matrix.ts';
 export type { Charge, Method, SearchResult } from './search/result.ts';
-export { candidateCount, leadingWord, type SearchOptions, searchNow } from './search/search.ts';
+export { candidateCount, leadingWord, type SearchOptions } from './search/search.ts';
 export type { OnProgress, Progress } from './search/sweep.ts';
 export type { Citation, PublishedTheorem } from './theory/citations.ts';
 export { type DecideOptions, decide } from './theory/decide.ts';
