@@ -15,9 +15,9 @@ export const algebra: Command = {
   summary: 'the charges named, their commutators, inner products, parities and ladder',
   help: `holdfast algebra FORMULA --range K
 
-For all charges of range up to K: what each owes to symmetries; which do not commute and what their commutator is; the Gram matrix under the infinite-temperature inner
-product per cell (for Pauli strings the sum of products of coefficients) and orthogonal combinations; signs under reflection of
-all spins, under flips of all spins by X, Y, Z and under transposition (Y to -Y); and the ladder: i[B, Q] with the boost B.
+For all charges of range up to K: what each owes to symmetries; which do not commute and what their commutator is; the Gram
+matrix under the infinite-temperature inner product per cell (for Pauli strings the sum of products of coefficients) and
+orthogonal combinations; signs under reflection of all spins, under flips of all spins by X, Y, Z and under transposition (Y to -Y); and the ladder: i[B, Q] with the boost B.
 
   holdfast algebra "XX + YY + ZZ" --range 4
 

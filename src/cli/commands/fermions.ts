@@ -12,7 +12,8 @@ export const fermions: Command = {
 
 Says whether the chain is bilinear under the Jordan-Wigner transformation along the spins, after a renaming of axes that may differ from
 spin to spin of the cell. If so: the Bogoliubov-de Gennes block h(q) in the basis c_q, c†_{-q} with H = sum over q of Ψ†hΨ, its eigenvalues
-λ(q) in closed form (a mode costs 2λ), and the bilinear charges. Other rotations and other orders of the spins are not tried, so "no" is no proof.
+λ(q) in closed form (a mode costs 2λ), and the bilinear charges. Other rotations and other orders of the
+spins are not tried, so "no" is no proof.
 
   holdfast fermions "XX + YY"
   holdfast fermions "ZZ + 2 X" --range 6
