@@ -9,7 +9,7 @@
  * "Transport and conservation laws", Phys. Rev. B 55, 11029 (1997).
  */
 import { Operator } from '../algebra/operator.ts';
-import { add, divide, multiply, type Rational, rational } from '../algebra/rational.ts';
+import { add, divide, type Exact, exact, multiply, type Rational, rational } from '../algebra/rational.ts';
 import { InputError, VerificationError } from '../errors.ts';
 import type { Chain } from '../lattice/chain.ts';
 import type { SearchResult } from '../search/result.ts';
@@ -30,7 +30,7 @@ export interface OverlapOptions {
    * μ = ⟨Z⟩ of every spin, −1 < μ < 1: the infinite-temperature state at this magnetisation, with connected products. Needs ΣZ conserved.
    * The default 0 is the trace.
    */
-  readonly magnetisation?: Rational;
+  readonly magnetisation?: Exact;
 }
 
 /**
@@ -41,8 +41,9 @@ export interface OverlapOptions {
 export function mazurBounds(
   result: SearchResult,
   observable: Operator,
-  { magnetisation }: OverlapOptions = {},
+  options: OverlapOptions = {},
 ): readonly MazurBound[] {
+  const magnetisation = options.magnetisation === undefined ? undefined : exact(options.magnetisation);
   const { chain, density } = result.hamiltonian;
   const a = chain.normalise(observable);
   if (a.isZero()) throw new InputError('overlap', 'an observable that acts on a spin', 'a constant');
