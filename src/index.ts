@@ -54,6 +54,7 @@ export {
   parseSites,
 } from './model/formula.ts';
 export { type Hamiltonian, hamiltonianOf } from './model/hamiltonian.ts';
+export { type LatticeFormulaOptions, parseBondModel, parseLatticeModel } from './model/lattice-formula.ts';
 export { chainModel, type LatticeModel, latticeModel, type PlacedStrings } from './model/lattice-model.ts';
 export {
   type Bond,
@@ -127,6 +128,7 @@ export {
 } from './report/grouping.ts';
 export { resultToJson } from './report/json.ts';
 export { latexDensity, latexEquation, latexResult } from './report/latex.ts';
+export { latticeResultToJson, printLatticeResult, sitesText } from './report/lattice.ts';
 export { mathmlEquation } from './report/mathml.ts';
 export { type PageOptions, reportPage } from './report/page.ts';
 export { growthPicture, legendPicture, pictureOfCharge, pictureOfResult } from './report/picture.ts';
@@ -134,7 +136,7 @@ export { DISPLAY, type Display, displayOf, rich } from './report/rich.ts';
 export { type Story, type StoryLayer, type StoryStep, storyOf, tellLayer, tellStep } from './report/story.ts';
 export { printCharge, printDensity, printResult, type TextOptions } from './report/text.ts';
 export { CAUTIONS, verdictOf } from './report/verdict.ts';
-export type { BackgroundOptions } from './search/background.ts';
+export { type BackgroundOptions, searchLattice } from './search/background.ts';
 export { type Estimate, estimate } from './search/estimate.ts';
 export { type RealDensity, realForms } from './search/lattice/real-form.ts';
 export type { LatticeCharge, LatticeResult } from './search/lattice/result.ts';

@@ -67,7 +67,8 @@ function cellOf(text: string | undefined): { cell?: number } {
   return { cell: Number(text) };
 }
 
-function settings({ values }: ModelInput): Map<string, Exact> {
+/** The values of `--set`. */
+export function settings({ values }: ModelInput): Map<string, Exact> {
   const parameters = new Map<string, Exact>();
   for (const setting of (values['set'] ?? []) as readonly string[]) {
     const equals = setting.indexOf('=');

@@ -4,12 +4,17 @@ import { freemem } from 'node:os';
 import { pathToFileURL } from 'node:url';
 import { Worker } from 'node:worker_threads';
 import { CancelledError, InputError, LimitError, VerificationError } from '../errors.ts';
+import { Box } from '../lattice/lattice.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
+import type { LatticeModel } from '../model/lattice-model.ts';
 import { estimate } from './estimate.ts';
+import type { LatticeResult } from './lattice/result.ts';
+import { estimateLattice, type LatticeOptions, type LatticeProgress } from './lattice/search.ts';
 import type { SearchResult } from './result.ts';
 import { methodFor, type SearchOptions } from './search.ts';
-import { plainModel, resultOf } from './transfer.ts';
-import type { Answer, Task } from './worker.ts';
+import type { Progress } from './sweep.ts';
+import { type PlainResult, plainModel, resultOf } from './transfer.ts';
+import type { Answer, LatticeTask, Task } from './worker.ts';
 
 export interface BackgroundOptions extends Omit<SearchOptions, 'store'> {
   readonly signal?: AbortSignal;
@@ -42,18 +47,51 @@ export async function search(h: Hamiltonian, options: BackgroundOptions): Promis
     ...(primesBelow === undefined ? {} : { primesBelow }),
     ...(checkpoint === undefined ? {} : { checkpoint }),
   };
+  return inThread<Progress, PlainResult>(task, onProgress, signal).then((result) => resultOf(h, result));
+}
+
+/**
+ * `searchLatticeNow` in a worker thread.
+ *
+ * @throws as `search`
+ */
+export async function searchLattice(
+  model: LatticeModel,
+  options: LatticeOptions & Pick<BackgroundOptions, 'signal' | 'memory'>,
+): Promise<LatticeResult> {
+  const { signal, memory = freeMemory(), onProgress, ...plain } = options;
+  const need = estimateLattice(model, plain);
+  if (need.bytes > memory)
+    throw new LimitError(
+      `search: the window has ${need.candidates.toLocaleString('en')} candidates and needs about ${gigabytes(need.bytes)}; ` +
+        `${gigabytes(memory)} may be used. Give a larger memory limit to try all the same`,
+    );
+  if (signal?.aborted) throw new CancelledError('search');
+  const { cell, extents } = model.lattice;
+  const task: LatticeTask = { lattice: { ...model, lattice: { cell, extents } }, options: plain };
+  const result = await inThread<LatticeProgress, LatticeResult>(task, onProgress, signal);
+  const { box } = result;
+  return Object.freeze({ ...result, model, box: new Box(box.cell, box.low, box.size) });
+}
+
+/** Runs a task in a worker: its result as a plain value. */
+async function inThread<P, R>(
+  task: Task | LatticeTask,
+  onProgress: ((progress: P) => void) | undefined,
+  signal: AbortSignal | undefined,
+): Promise<R> {
   const worker = new Worker(...workerSource(task));
   try {
-    return await new Promise<SearchResult>((resolve, reject) => {
+    return await new Promise<R>((resolve, reject) => {
       signal?.addEventListener('abort', () => reject(new CancelledError('search')), { once: true });
-      worker.on('message', (answer: Answer) => {
+      worker.on('message', (answer: Answer<P, R>) => {
         if (answer.kind === 'progress') {
           try {
             onProgress?.(answer.progress);
           } catch (error) {
             reject(error);
           }
-        } else if (answer.kind === 'result') resolve(resultOf(h, answer.result));
+        } else if (answer.kind === 'result') resolve(answer.result);
         else reject(errorOf(answer));
       });
       worker.on('error', reject);
@@ -67,7 +105,7 @@ export async function search(h: Hamiltonian, options: BackgroundOptions): Promis
 }
 
 /** An allocation that the machine refuses arrives as a RangeError. */
-function errorOf({ name, message, input }: Extract<Answer, { kind: 'error' }>): Error {
+function errorOf({ name, message, input }: Extract<Answer<unknown, unknown>, { kind: 'error' }>): Error {
   if (input !== undefined) return new InputError(input.who, input.expected, input.got);
   if (name === 'LimitError' || name === 'RangeError') return new LimitError(message);
   return new VerificationError(message);
@@ -86,7 +124,7 @@ function gigabytes(bytes: number): string {
  * The worker's file beside this one. From source its thread needs a TypeScript loader of its own, whatever the host uses: the
  * loader of the development set-up is registered there first.
  */
-function workerSource(task: Task): ConstructorParameters<typeof Worker> {
+function workerSource(task: Task | LatticeTask): ConstructorParameters<typeof Worker> {
   if (!import.meta.url.endsWith('.ts'))
     return [new URL('./worker.js', import.meta.url), { workerData: task }];
   const loader = createRequire(import.meta.url)

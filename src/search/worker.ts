@@ -1,7 +1,11 @@
 /** The thread that searches: takes one task, tells its progress, answers once. */
 import { parentPort, workerData } from 'node:worker_threads';
 import { HoldfastError, InputError } from '../errors.ts';
+import { type Extent, Lattice } from '../lattice/lattice.ts';
+import type { LatticeModel } from '../model/lattice-model.ts';
 import { checkpointIn } from './checkpoint.ts';
+import type { LatticeResult } from './lattice/result.ts';
+import { type LatticeOptions, type LatticeProgress, searchLatticeNow } from './lattice/search.ts';
 import type { Method } from './result.ts';
 import { searchNow } from './search.ts';
 import type { Progress } from './sweep.ts';
@@ -16,9 +20,17 @@ export interface Task {
   readonly checkpoint?: string;
 }
 
-export type Answer =
-  | { readonly kind: 'progress'; readonly progress: Progress }
-  | { readonly kind: 'result'; readonly result: PlainResult }
+/** The same for a model on a lattice. */
+export interface LatticeTask {
+  readonly lattice: Omit<LatticeModel, 'lattice'> & {
+    readonly lattice: { readonly cell: number; readonly extents: readonly Extent[] };
+  };
+  readonly options: Omit<LatticeOptions, 'onProgress'>;
+}
+
+export type Answer<P, R> =
+  | { readonly kind: 'progress'; readonly progress: P }
+  | { readonly kind: 'result'; readonly result: R }
   | { readonly kind: 'error'; readonly name: string; readonly message: string; readonly input?: InputFault };
 
 interface InputFault {
@@ -32,21 +44,30 @@ const INTERVAL = 100;
 
 const port = parentPort;
 if (port !== null) {
-  const { model, checkpoint, ...options } = workerData as Task;
+  const task = workerData as Task | LatticeTask;
   let last = performance.now();
-  const answer = (message: Answer) => port.postMessage(message);
+  const answer = (message: Answer<Progress | LatticeProgress, PlainResult | LatticeResult>) =>
+    port.postMessage(message);
+  const onProgress = (progress: Progress | LatticeProgress) => {
+    const now = performance.now();
+    if (now - last < INTERVAL) return;
+    last = now;
+    answer({ kind: 'progress', progress });
+  };
   try {
-    const result = searchNow(modelOf(model), {
-      ...options,
-      ...(checkpoint === undefined ? {} : { store: checkpointIn(checkpoint, model, options.range) }),
-      onProgress(progress) {
-        const now = performance.now();
-        if (now - last < INTERVAL) return;
-        last = now;
-        answer({ kind: 'progress', progress });
-      },
-    });
-    answer({ kind: 'result', result: plainResult(result) });
+    if ('lattice' in task) {
+      const { cell, extents } = task.lattice.lattice;
+      const model = { ...task.lattice, lattice: new Lattice(cell, extents) };
+      answer({ kind: 'result', result: searchLatticeNow(model, { ...task.options, onProgress }) });
+    } else {
+      const { model, checkpoint, ...options } = task;
+      const result = searchNow(modelOf(model), {
+        ...options,
+        ...(checkpoint === undefined ? {} : { store: checkpointIn(checkpoint, model, options.range) }),
+        onProgress,
+      });
+      answer({ kind: 'result', result: plainResult(result) });
+    }
   } catch (error) {
     if (!(error instanceof HoldfastError) && !(error instanceof RangeError)) throw error;
     const input =

@@ -4,12 +4,14 @@ import { checkNow } from '../../check/check.ts';
 import { InputError, LimitError, show } from '../../errors.ts';
 import { resultToJson } from '../../report/json.ts';
 import { latexResult } from '../../report/latex.ts';
+import { latticeResultToJson, printLatticeResult } from '../../report/lattice.ts';
 import { type PageOptions, reportPage } from '../../report/page.ts';
 import { pictureOfResult } from '../../report/picture.ts';
 import { printResult } from '../../report/text.ts';
-import { search as searchInBackground } from '../../search/background.ts';
+import { search as searchInBackground, searchLattice } from '../../search/background.ts';
 import type { SearchResult } from '../../search/result.ts';
 import { type Command, type CommandInput, Exit } from '../command.ts';
+import { asksForLattice, LATTICE_HELP, LATTICE_OPTIONS, latticeFromOptions } from '../lattice-options.ts';
 import { MODEL_HELP, MODEL_OPTIONS, modelFromOptions } from '../model-options.ts';
 import { writeFileWhole } from '../output-file.ts';
 import { progressLine, shareLine } from '../progress.ts';
@@ -37,6 +39,8 @@ Search:
   --checkpoint DIR      keeps finished layers there; the same search, started again, goes on from the last one
   --memory GB           refuse to start above so many gigabytes (default: what is free)
 
+${LATTICE_HELP}
+
 Output:
   --unfold              print every string; else long charges are folded, with the count of the rest
   --json                the result for machines, every string, and nothing else, on standard output
@@ -47,6 +51,7 @@ Output:
 Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
   options: {
     ...MODEL_OPTIONS,
+    ...LATTICE_OPTIONS,
     range: { type: 'string' },
     json: { type: 'boolean' },
     certificate: { type: 'string' },
@@ -59,6 +64,7 @@ Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
     picture: { type: 'string' },
   },
   async run(input) {
+    if (asksForLattice(input)) return runOnLattice(input);
     const range = rangeOption(input);
     const memory = gigabytesOption(input);
     if (input.values['json'] === true && input.values['latex'] === true)
@@ -91,6 +97,35 @@ Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
     return Exit.done;
   },
 };
+
+/** What the chain's search has and this one does not write. */
+const CHAIN_ONLY = ['certificate', 'checkpoint', 'latex', 'report', 'picture'] as const;
+
+async function runOnLattice(input: CommandInput): Promise<number> {
+  for (const name of CHAIN_ONLY)
+    if (input.values[name] !== undefined)
+      throw new InputError(
+        `--${name}`,
+        'the uniform infinite chain',
+        'an option for other lattices beside it',
+      );
+  const range = input.values['range'] === undefined ? undefined : rangeOption(input);
+  const memory = gigabytesOption(input);
+  const { model, options } = await latticeFromOptions(input, range);
+  const line = shareLine(input, 'searching');
+  const result = await searchLattice(model, {
+    ...options,
+    signal: input.signal,
+    onProgress: ({ done }) => line.show(done),
+    ...(memory === undefined ? {} : { memory }),
+  }).finally(line.clear);
+  input.out(
+    input.values['json'] === true
+      ? `${JSON.stringify(latticeResultToJson(result), null, 2)}\n`
+      : printLatticeResult(result, input.values['unfold'] === true ? Number.POSITIVE_INFINITY : undefined),
+  );
+  return Exit.done;
+}
 
 /** The certificate, or why it would be too large. */
 async function proofOf(result: SearchResult, input: CommandInput): Promise<string | LimitError> {
