@@ -170,3 +170,4 @@ export { type Answer, answersOf, type Locus } from './theory/family/loci.ts';
 export { type LadderOptions, ladder, NoLadderError, type Rung } from './theory/ladder.ts';
 export { PUBLISHED } from './theory/published/index.ts';
 export type { EveryRangeBound, EveryRangeVerdict, Existence } from './theory/verdict.ts';
+export type { AtWaveNumber, WaveNumberVerdict } from './theory/wave-numbers.ts';

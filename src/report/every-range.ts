@@ -1,5 +1,6 @@
 /** An every-range verdict as text for a terminal. */
 import type { EveryRangeBound, EveryRangeVerdict, Existence } from '../theory/verdict.ts';
+import type { WaveNumberVerdict } from '../theory/wave-numbers.ts';
 
 export function printVerdict(verdict: EveryRangeVerdict): string {
   const { search, cautions } = verdict;
@@ -7,6 +8,7 @@ export function printVerdict(verdict: EveryRangeVerdict): string {
   const lines = [headline(verdict), ''];
   lines.push(...reasons(verdict));
   lines.push(`Searched exhaustively: charges of range exactly 1 … ${search.range}: ${counts.join(', ')}.`);
+  if (verdict.waveNumbers !== null) lines.push(...waveNumberLines(verdict.waveNumbers));
   lines.push('', ...cautions);
   return `${lines.join('\n')}\n`;
 }
@@ -77,4 +79,17 @@ function exist(existence: Existence): string {
   return existence.kind === 'ladder'
     ? 'Existence: [[B, H], H] = 0 for a boost operator B, so there is a ladder with a charge of every range (arXiv:2508.20713, cited).'
     : 'Existence: bilinear in Majorana operators, two charges of every range ≥ 2.';
+}
+
+function waveNumberLines(found: WaveNumberVerdict): string[] {
+  if (found.kind === 'open') return [`Other wave numbers: open; ${found.reason}.`];
+  const [, staggered] = found.at;
+  const { generic, exceptional } = staggered.bounds;
+  const from = staggered.short.reduce((sum, n) => sum + n, 0);
+  return [
+    `Staggered charges (wave number π): ${staggered.short.join(' and ')} of range exactly 1 and 2, ${generic === 0 && exceptional.length === 0 ? 'none' : `at most ${Math.max(generic, ...exceptional.map((e) => e.dimension))}`} of every range ≥ 3.`,
+    found.noneOfRange3
+      ? `No charge of range ≥ 3 at any wave number.`
+      : 'At wave numbers other than 0 and π there is no charge of any range.',
+  ];
 }

@@ -13,15 +13,19 @@ import { CORE_LENGTH, HalfStepGrowth, halfSteps } from './half-steps.ts';
 import { ladderBase } from './ladder.ts';
 import { boundsOf } from './pencil.ts';
 import {
+  ALL_WAVE_NUMBERS_CAUTION,
   EVERY_RANGE_CAUTIONS,
   type EveryRangeBound,
   type EveryRangeVerdict,
   type Existence,
 } from './verdict.ts';
+import { decideWaveNumbers, type WaveNumberVerdict } from './wave-numbers.ts';
 
 export interface DecideOptions {
   /** The exhaustive search goes at least so far, in cells; by default as far as the verdict needs, and a little further where it is open. */
   readonly searchRange?: number;
+  /** Look at quantities that are not translation invariant too. */
+  readonly waveNumbers?: boolean;
   /** Called with the stage that begins; throwing from it stops the decision. */
   readonly onStage?: (stage: 'lemmas' | 'search' | 'ladder') => void;
 }
@@ -43,7 +47,7 @@ const MAX_HALF_STEP_SPINS = 2;
  */
 export function decide(
   h: Hamiltonian,
-  { searchRange = 1, onStage = () => {} }: DecideOptions = {},
+  { searchRange = 1, waveNumbers: wanted = false, onStage = () => {} }: DecideOptions = {},
 ): EveryRangeVerdict {
   onStage('lemmas');
   const model = decompose(h);
@@ -63,7 +67,12 @@ export function decide(
       closed ? needed : openRange(h, needed, 'reason' in bound ? 'undecided' : 'bounded'),
     ),
   });
-  const common = { hamiltonian: h, search, cautions: EVERY_RANGE_CAUTIONS };
+  const waveNumbers = !wanted ? null : waveNumbersOf(h, model);
+  const cautions =
+    waveNumbers?.kind === 'covered'
+      ? EVERY_RANGE_CAUTIONS.map((caution, i) => (i === 1 ? ALL_WAVE_NUMBERS_CAUTION : caution))
+      : EVERY_RANGE_CAUTIONS;
+  const common = { hamiltonian: h, search, waveNumbers, cautions };
   if ('reason' in bound) {
     const citation = citationFor(h);
     return citation === undefined
@@ -82,6 +91,10 @@ function firstRange({ dimensionByRange }: SearchResult, perRange: number): numbe
   let range = dimensionByRange.length;
   while (range > 0 && dimensionByRange[range - 1]! - (dimensionByRange[range - 2] ?? 0) === perRange) range--;
   return range + 1;
+}
+
+function waveNumbersOf(h: Hamiltonian, model: BondsAndFields | undefined): WaveNumberVerdict {
+  return model === undefined ? { kind: 'open', ...tooWide(h) } : decideWaveNumbers(model);
 }
 
 /** Largest range, in cells of the model, that a charge below the bound's first range can have. */

@@ -3,6 +3,7 @@ import type { Hamiltonian } from '../model/hamiltonian.ts';
 import type { SearchResult } from '../search/result.ts';
 import type { Citation } from './citations.ts';
 import type { Pencil } from './pencil.ts';
+import type { WaveNumberVerdict } from './wave-numbers.ts';
 
 /** An upper bound on the number of charges of every range from `from` on, by the program's own lemmas. */
 export interface EveryRangeBound {
@@ -30,6 +31,8 @@ interface Common {
   readonly search: SearchResult;
   /** The answer assumes so much, and does not show so much. Shown wherever the verdict is. */
   readonly cautions: readonly string[];
+  /** Without the assumption of translation invariance, where that was asked for. */
+  readonly waveNumbers: WaveNumberVerdict | null;
 }
 
 export type EveryRangeVerdict = Common &
@@ -73,3 +76,7 @@ export const EVERY_RANGE_CAUTIONS = [
   'Covers translation-invariant sums of local terms: says nothing about quasilocal, non-local or staggered quantities.',
   'Absence of local charges supports thermalisation or chaos; by itself it proves neither.',
 ] as const;
+
+/** In place of the second one, when every wave number is covered. */
+export const ALL_WAVE_NUMBERS_CAUTION =
+  'Every wave number is covered, so translation invariance is not assumed; says nothing about quasilocal or non-local quantities.';

@@ -31,10 +31,16 @@ ${MODEL_HELP}
 
 Decide:
   --range K             search at least up to range K for what the lemmas leave open
+  --wave-numbers        quantities that are not translation invariant, too (one spin a cell, injective)
   --json                the verdict for machines, and nothing else, on standard output
 
 Exit status: 0 a verdict of one of the first four kinds, 1 undecided or a failure, 2 bad input.`,
-  options: { ...MODEL_OPTIONS, range: { type: 'string' }, json: { type: 'boolean' } },
+  options: {
+    ...MODEL_OPTIONS,
+    range: { type: 'string' },
+    'wave-numbers': { type: 'boolean' },
+    json: { type: 'boolean' },
+  },
   async run(input) {
     const text = input.values['range'];
     if (text !== undefined && (typeof text !== 'string' || !/^[1-9]\d{0,3}$/.test(text)))
@@ -42,6 +48,7 @@ Exit status: 0 a verdict of one of the first four kinds, 1 undecided or a failur
     const model = await modelFromOptions(input);
     const verdict = decideModel(model, {
       ...(text === undefined ? {} : { searchRange: Number(text) }),
+      waveNumbers: input.values['wave-numbers'] === true,
       onStage: (stage) => {
         if (input.signal.aborted) throw new CancelledError('decide');
         if (input.interactive) input.note(`\r\u001b[2Kdecide: ${stage}`);
@@ -91,6 +98,7 @@ export function verdictToJson(verdict: EveryRangeVerdict): object {
             axes: verdict.citation.axes,
           }
         : null,
+    waveNumbers: verdict.waveNumbers,
     search: resultToJson(verdict.search),
     cautions: verdict.cautions,
   };
