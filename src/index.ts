@@ -152,6 +152,7 @@ export { EquationMatrix, type MatrixSize } from './search/matrix.ts';
 export type { Charge, Method, SearchResult } from './search/result.ts';
 export { candidateCount, leadingWord, type SearchOptions } from './search/search.ts';
 export type { OnProgress, Progress } from './search/sweep.ts';
+export { everyRangeCertificate } from './theory/certificate.ts';
 export type { Citation, PublishedTheorem } from './theory/citations.ts';
 export { type DecideOptions, decide } from './theory/decide.ts';
 export type { Case, Solved } from './theory/family/case.ts';
@@ -167,7 +168,14 @@ export {
   type FamilyState,
 } from './theory/family/classify.ts';
 export { type Answer, answersOf, type Locus } from './theory/family/loci.ts';
-export { type LadderOptions, ladder, NoLadderError, type Rung } from './theory/ladder.ts';
+export {
+  climbing,
+  type LadderOptions,
+  type LadderProgress,
+  ladder,
+  NoLadderError,
+  type Rung,
+} from './theory/ladder.ts';
 export { PUBLISHED } from './theory/published/index.ts';
 export type { EveryRangeBound, EveryRangeVerdict, Existence } from './theory/verdict.ts';
 export type { AtWaveNumber, WaveNumberVerdict } from './theory/wave-numbers.ts';

@@ -60,16 +60,17 @@ export function documentText(result: SearchResult, evidence: Evidence): string {
   });
 }
 
-function text(chain: Chain, word: bigint): string {
+export function text(chain: Chain, word: bigint): string {
   return textFromWord(word, chain.range(word) * chain.cell);
 }
 
-function terms(chain: Chain, density: Operator): string[][] {
+/** Strings and exact coefficients, in the order that the format prescribes. */
+export function terms(chain: Chain, density: Operator): string[][] {
   return [...density.terms()].map(([word, c]) => [text(chain, word), textFromRational(c)]);
 }
 
-type Value = string | number | readonly Value[] | { readonly [key: string]: Value };
+export type Value = string | number | readonly Value[] | { readonly [key: string]: Value };
 
-function canonicalText(value: Value): string {
+export function canonicalText(value: Value): string {
   return `${JSON.stringify(value)}\n`;
 }

@@ -59,7 +59,7 @@ export function readWord(text: string, cell: number, longest: number, what: stri
 }
 
 /** i^e of the product of two strings. A string with y letters Y is i^y X^x Z^z; moving Z past X costs a sign a spin. */
-function phase(a: number, b: number): number {
+export function phase(a: number, b: number): number {
   const ys = (word: number) => ones(word & (word >>> 1) & 0x55555555);
   return (ys(a) + ys(b) - ys(a ^ b) + 2 * ones((a >>> 1) & b & 0x55555555)) & 3;
 }

@@ -3,6 +3,7 @@
  * search, and imports nothing from outside this folder. The rules are those of docs/certificate.md; C1, E2, … are its step numbers.
  */
 import { fields, Malformed, parseCanonical, Rejected, string } from './document.ts';
+import { checkEveryRange, EVERY_RANGE } from './every-range.ts';
 import { checkExhaustive, KIND, type Parts } from './exhaustive.ts';
 import { sha256 } from './sha256.ts';
 
@@ -27,6 +28,7 @@ export interface CheckOptions {
 /** The kinds of evidence, each a file of this folder and a section of the document. */
 const KINDS: ReadonlyMap<string, (parts: Parts) => Generator<number, string>> = new Map([
   [KIND, checkExhaustive],
+  [EVERY_RANGE, checkEveryRange],
 ]);
 
 /** The check, step by step: yields the share of the work done. Never throws for a bad certificate, whatever is in it. */

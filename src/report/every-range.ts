@@ -85,11 +85,10 @@ function waveNumberLines(found: WaveNumberVerdict): string[] {
   if (found.kind === 'open') return [`Other wave numbers: open; ${found.reason}.`];
   const [, staggered] = found.at;
   const { generic, exceptional } = staggered.bounds;
-  const from = staggered.short.reduce((sum, n) => sum + n, 0);
   return [
     `Staggered charges (wave number π): ${staggered.short.join(' and ')} of range exactly 1 and 2, ${generic === 0 && exceptional.length === 0 ? 'none' : `at most ${Math.max(generic, ...exceptional.map((e) => e.dimension))}`} of every range ≥ 3.`,
     found.noneOfRange3
-      ? `No charge of range ≥ 3 at any wave number.`
+      ? 'No charge of range ≥ 3 at any wave number.'
       : 'At wave numbers other than 0 and π there is no charge of any range.',
   ];
 }

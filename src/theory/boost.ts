@@ -78,15 +78,18 @@ export interface Pass {
  *
  * Exact: a coefficient of Q is cut into limbs so short that no sum of any plane leaves the 53 bits in which doubles count exactly.
  *
- * @param visit called now and then with the fraction done; throwing from it stops the pass
  * @throws LimitError where strings or couplings are too long to pack
  */
-export function pass(
-  boost: Boost,
-  q: PackedDensity,
-  wanted: 'check' | 'boost',
-  visit: (done: number) => void = () => {},
-): Pass {
+export function pass(boost: Boost, q: PackedDensity, wanted: 'check' | 'boost'): Pass {
+  const steps = passing(boost, q, wanted);
+  for (;;) {
+    const step = steps.next();
+    if (step.done) return step.value;
+  }
+}
+
+/** As `pass`; yields the fraction done every few milliseconds, so that a caller can give way or stop. */
+export function* passing(boost: Boost, q: PackedDensity, wanted: 'check' | 'boost'): Generator<number, Pass> {
   const { chain } = boost;
   const terms = termsOf(boost);
   const reach = Math.max(...terms.map((t) => t.range)) - 1;
@@ -101,7 +104,7 @@ export function pass(
   // Products are written out: a pair of halves returned from a function would be an object for each of some 10⁸ outputs.
   const mask = MASK;
   for (let i = 0; i < count; i++) {
-    if ((i & 0xfff) === 0) visit(i / count);
+    if ((i & 0x3ff) === 0x3ff) yield i / count;
     const [low, high] = shiftUp(q.low[i]!, q.high[i]!, reach * cellBits);
     for (const term of terms) {
       const { word, sign: signs, h: own, weighted, shift } = term;

@@ -24,6 +24,8 @@ import { decideWaveNumbers, type WaveNumberVerdict } from './wave-numbers.ts';
 export interface DecideOptions {
   /** The exhaustive search goes at least so far, in cells; by default as far as the verdict needs, and a little further where it is open. */
   readonly searchRange?: number;
+  /** A search that was made already: taken instead of a new one where it goes far enough. */
+  readonly searched?: SearchResult;
   /** Look at quantities that are not translation invariant too. */
   readonly waveNumbers?: boolean;
   /** Called with the stage that begins; throwing from it stops the decision. */
@@ -47,7 +49,7 @@ const MAX_HALF_STEP_SPINS = 2;
  */
 export function decide(
   h: Hamiltonian,
-  { searchRange = 1, waveNumbers: wanted = false, onStage = () => {} }: DecideOptions = {},
+  { searchRange = 1, searched, waveNumbers: wanted = false, onStage = () => {} }: DecideOptions = {},
 ): EveryRangeVerdict {
   onStage('lemmas');
   const model = decompose(h);
@@ -61,12 +63,11 @@ export function decide(
     bound.exceptional.length === 0 &&
     (bound.generic === 0 || (bound.group === 1 && existence?.perRange === bound.generic));
   onStage('search');
-  const search = searchNow(h, {
-    range: Math.max(
-      searchRange,
-      closed ? needed : openRange(h, needed, 'reason' in bound ? 'undecided' : 'bounded'),
-    ),
-  });
+  const range = Math.max(
+    searchRange,
+    closed ? needed : openRange(h, needed, 'reason' in bound ? 'undecided' : 'bounded'),
+  );
+  const search = searched !== undefined && searched.range >= range ? searched : searchNow(h, { range });
   const waveNumbers = !wanted ? null : waveNumbersOf(h, model);
   const cautions =
     waveNumbers?.kind === 'covered'

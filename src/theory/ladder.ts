@@ -11,7 +11,7 @@ import { gcd } from '../algebra/rational.ts';
 import { HoldfastError, InputError, show, VerificationError } from '../errors.ts';
 import type { Chain } from '../lattice/chain.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
-import { type Boost, type PackedDensity, pack, pass, unpack } from './boost.ts';
+import { type Boost, type PackedDensity, pack, pass, passing, unpack } from './boost.ts';
 import { exactNullSpace, MatrixBuilder } from './null-space.ts';
 import { orthogonalBasis, projection } from './orthogonal.ts';
 
@@ -90,23 +90,27 @@ export interface Rung {
 export interface LadderOptions {
   /** The longest charge, in cells. */
   readonly range: number;
-  readonly onProgress?: (progress: {
-    readonly range: number;
-    readonly done: number;
-    readonly terms: number;
-  }) => void;
+}
+
+/** Between two rungs: the range of the last one, its terms, and the share of its products that are done. */
+export interface LadderProgress {
+  readonly range: number;
+  readonly done: number;
+  readonly terms: number;
 }
 
 /**
  * The charges of a ladder, range by range, each as soon as it is re-checked. Cost: proportional to the answer, times the terms of H and the range.
  *
- * @throws InputError for a range below 2 or a model without interaction; NoLadderError where no boost operator was found (which
- * proves nothing); VerificationError should a rung not commute with H
+ * @throws InputError for a range below 2; NoLadderError where no boost operator was found (which proves nothing);
+ * VerificationError should a rung not commute with H; LimitError where its strings do not pack
  */
-export function* ladder(
-  model: Hamiltonian,
-  { range, onProgress = () => {} }: LadderOptions,
-): Generator<Rung> {
+export function* ladder(model: Hamiltonian, options: LadderOptions): Generator<Rung> {
+  for (const step of climbing(model, options)) if ('packed' in step) yield step;
+}
+
+/** As `ladder`, with progress every few milliseconds, so that a caller can give way or stop. */
+export function* climbing(model: Hamiltonian, { range }: LadderOptions): Generator<Rung | LadderProgress> {
   if (!(Number.isInteger(range) && range >= 2))
     throw new InputError('ladder', 'a range of two cells or more, a whole number', show(range));
   const base = ladderBase(model);
@@ -121,11 +125,14 @@ export function* ladder(
   let doubled = false;
   let previous = 0;
   for (;;) {
-    doubled ||= current.range === previous;
-    const last = current.range >= range && (!doubled || current.range === previous);
     const { range: here, coefficients } = current;
-    const report = (done: number) => onProgress({ range: here, done, terms: coefficients.length });
-    const { conserved, boosted } = pass(boost, current, last ? 'check' : 'boost', report);
+    doubled ||= here === previous;
+    const last = here >= range && (!doubled || here === previous);
+    const steps = passing(boost, current, last ? 'check' : 'boost');
+    let step = steps.next();
+    for (; !step.done; step = steps.next())
+      yield { range: here, done: step.value, terms: coefficients.length };
+    const { conserved, boosted } = step.value;
     if (!conserved) throw new VerificationError(`ladder: the rung of range ${here} does not commute with H`);
     if (!commutesWith(boost.chain, removed, current))
       throw new VerificationError(

@@ -3,10 +3,14 @@ import { textFromRational } from '../../algebra/rational.ts';
 import { CancelledError, InputError, show } from '../../errors.ts';
 import { printVerdict } from '../../report/every-range.ts';
 import { resultToJson } from '../../report/json.ts';
+import { search as searchInBackground } from '../../search/background.ts';
+import { everyRangeCertificate } from '../../theory/certificate.ts';
 import { decide as decideModel } from '../../theory/decide.ts';
 import type { EveryRangeVerdict } from '../../theory/verdict.ts';
 import { type Command, Exit } from '../command.ts';
 import { MODEL_HELP, MODEL_OPTIONS, modelFromOptions } from '../model-options.ts';
+import { writeFileWhole } from '../output-file.ts';
+import { progressLine } from '../progress.ts';
 
 export const decide: Command = {
   name: 'decide',
@@ -32,6 +36,7 @@ ${MODEL_HELP}
 Decide:
   --range K             search at least up to range K for what the lemmas leave open
   --wave-numbers        quantities that are not translation invariant, too (one spin a cell, injective)
+  --certificate FILE    writes the proof of the upper bound, for "holdfast check FILE" (one spin a cell, injective)
   --json                the verdict for machines, and nothing else, on standard output
 
 Exit status: 0 a verdict of one of the first four kinds, 1 undecided or a failure, 2 bad input.`,
@@ -39,6 +44,7 @@ Exit status: 0 a verdict of one of the first four kinds, 1 undecided or a failur
     ...MODEL_OPTIONS,
     range: { type: 'string' },
     'wave-numbers': { type: 'boolean' },
+    certificate: { type: 'string' },
     json: { type: 'boolean' },
   },
   async run(input) {
@@ -46,8 +52,18 @@ Exit status: 0 a verdict of one of the first four kinds, 1 undecided or a failur
     if (text !== undefined && (typeof text !== 'string' || !/^[1-9]\d{0,3}$/.test(text)))
       throw new InputError('--range', 'a whole number of cells, 1 or more', show(text));
     const model = await modelFromOptions(input);
+    // A long search runs in a thread of its own, where it can be interrupted; what a verdict needs by itself is short.
+    const line = progressLine(input);
+    const searched =
+      text === undefined
+        ? undefined
+        : await searchInBackground(model, {
+            range: Number(text),
+            signal: input.signal,
+            onProgress: line.show,
+          }).finally(line.clear);
     const verdict = decideModel(model, {
-      ...(text === undefined ? {} : { searchRange: Number(text) }),
+      ...(searched === undefined ? {} : { searched, searchRange: searched.range }),
       waveNumbers: input.values['wave-numbers'] === true,
       onStage: (stage) => {
         if (input.signal.aborted) throw new CancelledError('decide');
@@ -55,6 +71,9 @@ Exit status: 0 a verdict of one of the first four kinds, 1 undecided or a failur
       },
     });
     if (input.interactive) input.note('\r\u001b[2K');
+    const file = input.values['certificate'];
+    if (typeof file === 'string')
+      await writeFileWhole('--certificate', file, [everyRangeCertificate(model)], input.signal);
     input.out(
       input.values['json'] === true
         ? `${JSON.stringify(verdictToJson(verdict), null, 2)}\n`

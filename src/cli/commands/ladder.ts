@@ -3,11 +3,12 @@
 import { once } from 'node:events';
 import { createWriteStream } from 'node:fs';
 import { textFromWord } from '../../algebra/word.ts';
-import { CancelledError, InputError, show } from '../../errors.ts';
+import { InputError, show } from '../../errors.ts';
 import { unpack, wordOf } from '../../theory/boost.ts';
-import { ladder as climb, type Rung } from '../../theory/ladder.ts';
+import { climbing, type Rung } from '../../theory/ladder.ts';
 import { type Command, Exit } from '../command.ts';
 import { MODEL_HELP, MODEL_OPTIONS, modelFromOptions } from '../model-options.ts';
+import { giveWay } from '../output-file.ts';
 import { rangeOption } from './search.ts';
 
 /** Terms up to which a charge is printed. */
@@ -37,27 +38,24 @@ Exit status: 0 the ladder reached its range, 1 there is none or a failure, 2 bad
     if (range < 2) throw new InputError('--range', 'a whole number of cells, 2 or more', show(String(range)));
     const file = input.values['output'] as string | undefined;
     const model = await modelFromOptions(input);
-    const rungs = climb(model, {
-      range,
-      onProgress: ({ range: here, done, terms }) => {
-        if (input.signal.aborted) throw new CancelledError('ladder');
-        if (input.interactive)
-          input.note(
-            `\r\u001b[2Kladder: range ${here}, ${terms.toLocaleString('en')} terms, ${(100 * done).toFixed(0)} %`,
-          );
-      },
-    });
     const sink = file === undefined ? undefined : await openNew(file);
     let reached = 0;
     try {
-      for (const rung of rungs) {
+      for (const step of climbing(model, { range })) {
+        if (!('packed' in step)) {
+          await giveWay('ladder', input.signal);
+          if (input.interactive)
+            input.note(
+              `\r\u001b[2Kladder: range ${step.range}, ${step.terms.toLocaleString('en')} terms, ${(100 * step.done).toFixed(0)} %`,
+            );
+          continue;
+        }
         if (input.interactive) input.note('\r\u001b[2K');
-        reached = rung.range;
-        input.out(
-          `range ${rung.range}: ${rung.size} terms${sink === undefined && rung.size <= FOLD ? `: ${unpack(rung.packed)}` : ''}\n`,
-        );
+        reached = step.range;
+        const text = sink === undefined && step.size <= FOLD ? `: ${unpack(step.packed)}` : '';
+        input.out(`range ${step.range}: ${step.size} terms${text}\n`);
         if (sink !== undefined)
-          for (const piece of lineOf(rung, model.chain.cell))
+          for (const piece of lineOf(step, model.chain.cell))
             if (!sink.write(piece)) await once(sink, 'drain');
       }
     } finally {
