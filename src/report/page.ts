@@ -16,6 +16,8 @@ export interface PageOptions {
   readonly title?: string;
   /** A certificate that was accepted, to be carried along: its id, and the text itself. */
   readonly certificate?: { readonly id: string; readonly text: string };
+  /** Why there is none. */
+  readonly noCertificate?: string;
   /** Strings of a charge that are typeset and drawn; the rest is counted, and in the JSON that the page carries. */
   readonly fold?: number;
 }
@@ -43,7 +45,7 @@ ${reportBody(result, options)}
 
 /** What is inside of the document's `<main>`, for pages with a frame of their own and `REPORT_STYLE`. */
 export function reportBody(result: SearchResult, options: PageOptions = {}): string {
-  const { certificate, fold = FOLD } = options;
+  const { certificate, noCertificate, fold = FOLD } = options;
   const { hamiltonian: h, charges, range, expansionOfH } = result;
   const formula = printDensity(h, h.density);
   const sections = [
@@ -72,7 +74,7 @@ export function reportBody(result: SearchResult, options: PageOptions = {}): str
     ]),
     section('certificate', 'Certificate', [
       certificate === undefined
-        ? '<p>This report carries no certificate. The numbers above can be had again by the same search.</p>'
+        ? `<p>This report carries no certificate${noCertificate === undefined ? '' : ` (${escapeMarkup(noCertificate)})`}. The numbers above can be had again by the same search.</p>`
         : `<p>Id <code>sha256:${escapeMarkup(certificate.id)}</code></p><p><a download="${fileName(certificate.id)}" href="${dataUri(certificate.text)}">Save the certificate</a>: whoever holds it can check the result with code that shares nothing with the search.</p>`,
       `<p><a download="result.json" href="${dataUri(JSON.stringify(resultToJson(result)))}">Save the result as JSON</a>, every string of every charge included.</p>`,
     ]),

@@ -17,7 +17,8 @@ export const algebra: Command = {
 
 For all charges of range up to K: what each owes to symmetries; which do not commute and what their commutator is; the Gram
 matrix under the infinite-temperature inner product per cell (for Pauli strings the sum of products of coefficients) and
-orthogonal combinations; signs under reflection of all spins, under flips of all spins by X, Y, Z and under transposition (Y to -Y); and the ladder: i[B, Q] with the boost B.
+orthogonal combinations; signs under reflection of all spins, under flips of all spins by X, Y, Z and under
+transposition (Y to -Y); and the ladder: i[B, Q] with the boost B.
 
   holdfast algebra "XX + YY + ZZ" --range 4
 

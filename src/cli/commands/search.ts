@@ -1,6 +1,5 @@
 /** `holdfast search`: all charges up to a range. */
 import { assertCertifiable, certificateOf } from '../../certificate/certificate.ts';
-import { checkNow } from '../../check/check.ts';
 import { InputError, LimitError, show } from '../../errors.ts';
 import { resultToJson } from '../../report/json.ts';
 import { latexResult } from '../../report/latex.ts';
@@ -10,6 +9,7 @@ import { pictureOfResult } from '../../report/picture.ts';
 import { printResult } from '../../report/text.ts';
 import { search as searchInBackground, searchLattice } from '../../search/background.ts';
 import type { SearchResult } from '../../search/result.ts';
+import { checkWithProgress } from '../certificate-file.ts';
 import { type Command, type CommandInput, Exit } from '../command.ts';
 import { asksForLattice, LATTICE_HELP, LATTICE_OPTIONS, latticeFromOptions } from '../lattice-options.ts';
 import { MODEL_HELP, MODEL_OPTIONS, modelFromOptions } from '../model-options.ts';
@@ -91,7 +91,12 @@ Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
       await writeFileWhole('--certificate', certificate, [proof], input.signal);
     }
     if (report !== undefined)
-      await writeFileWhole('--report', report, [reportPage(result, carried(proof))], input.signal);
+      await writeFileWhole(
+        '--report',
+        report,
+        [reportPage(result, await carried(proof, input))],
+        input.signal,
+      );
     if (picture !== undefined)
       await writeFileWhole('--picture', picture, [pictureOfResult(result)], input.signal);
     return Exit.done;
@@ -141,10 +146,12 @@ async function proofOf(result: SearchResult, input: CommandInput): Promise<strin
 }
 
 /** A report carries only a certificate that the checker accepts. */
-function carried(proof: string | LimitError | undefined): PageOptions {
-  if (typeof proof !== 'string') return {};
-  const verdict = checkNow(proof);
-  return verdict.status === 'accepted' ? { certificate: { id: verdict.id, text: proof } } : {};
+async function carried(proof: string | LimitError | undefined, input: CommandInput): Promise<PageOptions> {
+  if (typeof proof !== 'string') return proof === undefined ? {} : { noCertificate: proof.message };
+  const verdict = await checkWithProgress(proof, input);
+  return verdict.status === 'accepted'
+    ? { certificate: { id: verdict.id, text: proof } }
+    : { noCertificate: verdict.reason };
 }
 
 function printed(result: SearchResult, { values, colour, width }: CommandInput): string {
