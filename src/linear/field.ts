@@ -19,6 +19,9 @@ export interface Field {
   residue(value: bigint | number): number;
 }
 
+/** A search inverts the same few couplings over and over: the last inverse of each slot is kept. */
+const CACHE_MASK = 1023;
+
 /** @throws InputError unless p is a prime with 2 < p < `PRIME_BOUND` */
 export function primeField(p: number): Field {
   if (!(Number.isInteger(p) && p > 2 && p < PRIME_BOUND && isPrime(p)))
@@ -28,16 +31,22 @@ export function primeField(p: number): Field {
     const t = a * b;
     return t - Math.floor(t / p) * p;
   };
+  const inverted = new Uint32Array(CACHE_MASK + 1);
+  const inverses = new Uint32Array(CACHE_MASK + 1);
   return {
     p,
     multiply,
     inverse(a) {
+      const slot = a & CACHE_MASK;
+      if (inverted[slot] === a) return inverses[slot]!;
       let power = 1;
       let base = a;
-      for (let e = p - 2; e > 0; e = Math.floor(e / 2)) {
-        if (e % 2 === 1) power = multiply(power, base);
+      for (let e = p - 2; e > 0; e = e >>> 1) {
+        if ((e & 1) === 1) power = multiply(power, base);
         base = multiply(base, base);
       }
+      inverted[slot] = a;
+      inverses[slot] = power;
       return power;
     },
     residue(value) {

@@ -19,13 +19,13 @@ export function kernel(matrix: SparseMatrix, field: Field): SparseVector[] {
   const forest = new AffineForest(matrix.columns, field);
   const roots: number[] = [];
   const factors: number[] = [];
-  let offset: number[] = [];
+  const offset: number[] = [];
 
   /** Leaves the row as Σ factors·roots + offset·t. */
   const reduce = (row: number): void => {
     roots.length = 0;
     factors.length = 0;
-    offset = [];
+    offset.length = 0;
     for (let i = matrix.start[row]!; i < matrix.start[row + 1]!; i++) {
       forest.find(matrix.column[i]!);
       const value = residues[matrix.value[i]!]!;
@@ -60,7 +60,7 @@ export function kernel(matrix: SparseMatrix, field: Field): SparseVector[] {
     for (const row of open) {
       reduce(row);
       if (roots.length === 0) {
-        if (offset.some((v) => v !== 0)) constraints.push(offset);
+        if (offset.some((v) => v !== 0)) constraints.push(offset.slice());
       } else if (roots.length === 1) forest.settle(roots[0]!, factors[0]!, offset);
       else if (roots.length === 2) forest.tie(roots[0]!, factors[0]!, roots[1]!, factors[1]!, offset);
       else {

@@ -80,11 +80,13 @@ export function liftCharges(
 ): Lifted {
   const primes = [first.field.p];
   const shape = shapeOf(first.basis);
+  const columns = byColumn(matrix);
   let modulus = BigInt(first.field.p);
   let residues = flatten(first.basis).map((v) => v.values.map(BigInt));
   for (;;) {
     const charges = integersOf(first.basis, residues, modulus);
-    if (charges?.every((charge) => isAnnihilated(matrix, charge))) return { ok: true, charges, primes };
+    if (charges?.every((charge) => isAnnihilated(matrix, columns, charge)))
+      return { ok: true, charges, primes };
     if (primes.length === MAX_PRIMES) return { ok: false, reason: 'unlucky' };
     onPrime(primes.length);
     const next = fields.next();
@@ -165,16 +167,39 @@ function primitive(charge: IntegerVector): IntegerVector {
   return { ...charge, values: charge.values.map((v) => v / common) };
 }
 
-/** Does every equation hold exactly? Touches only rows that meet the vector. */
-function isAnnihilated(matrix: SparseMatrix, charge: IntegerVector): boolean {
-  const x = new Map(charge.columns.map((c, i) => [c, charge.values[i]!]));
-  for (let row = 0; row < matrix.rows; row++) {
-    let sum = 0n;
-    for (let i = matrix.start[row]!; i < matrix.start[row + 1]!; i++) {
-      const value = x.get(matrix.column[i]!);
-      if (value !== undefined) sum += value * matrix.values[matrix.value[i]!]!;
+/** The entries of a matrix by column, so that a product with a sparse vector costs what the vector meets. */
+interface ColumnView {
+  readonly start: Uint32Array;
+  readonly row: Uint32Array;
+  readonly value: Uint16Array;
+}
+
+function byColumn(matrix: SparseMatrix): ColumnView {
+  const start = new Uint32Array(matrix.columns + 1);
+  for (const column of matrix.column) start[column + 1]!++;
+  for (let c = 0; c < matrix.columns; c++) start[c + 1]! += start[c]!;
+  const next = start.slice();
+  const row = new Uint32Array(matrix.column.length);
+  const value = new Uint16Array(matrix.column.length);
+  for (let r = 0; r < matrix.rows; r++)
+    for (let i = matrix.start[r]!; i < matrix.start[r + 1]!; i++) {
+      const at = next[matrix.column[i]!]!++;
+      row[at] = r;
+      value[at] = matrix.value[i]!;
     }
-    if (sum !== 0n) return false;
-  }
+  return { start, row, value };
+}
+
+/** Does every equation hold exactly? In integers, over the rows that meet the vector. */
+function isAnnihilated(
+  matrix: SparseMatrix,
+  { start, row, value }: ColumnView,
+  charge: IntegerVector,
+): boolean {
+  const sums = new Map<number, bigint>();
+  for (const [i, column] of charge.columns.entries())
+    for (let at = start[column]!; at < start[column + 1]!; at++)
+      sums.set(row[at]!, (sums.get(row[at]!) ?? 0n) + charge.values[i]! * matrix.values[value[at]!]!);
+  for (const sum of sums.values()) if (sum !== 0n) return false;
   return true;
 }
