@@ -168,12 +168,17 @@ export {
   type FamilyState,
 } from './theory/family/classify.ts';
 export { type Answer, answersOf, type Locus } from './theory/family/loci.ts';
+export { stateFromText, textFromState } from './theory/family/state.ts';
 export {
   climbing,
   type LadderOptions,
+  type LadderOptions,
   type LadderProgress,
   ladder,
+  ladder,
   NoLadderError,
+  NoLadderError,
+  type Rung,
   type Rung,
 } from './theory/ladder.ts';
 export { PUBLISHED } from './theory/published/index.ts';

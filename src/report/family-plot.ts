@@ -37,6 +37,7 @@ export function plotFamily(result: FamilyResult, view: PlotWindow): string {
     { label: `${general!.dimensionByRange.join(', ')}   general couplings`, mark: square('#f4f4f0', '#999') },
   ];
   let style = 0;
+  let points = 0;
   for (const answer of answers)
     for (const locus of answer.loci.flatMap((l) => [l, ...l.equivalent])) {
       const stroke = STROKES[style % STROKES.length]!;
@@ -53,14 +54,18 @@ export function plotFamily(result: FamilyResult, view: PlotWindow): string {
         });
         style++;
       } else {
+        const number = ++points;
         const at = pointOf(locus);
         if (at === undefined) continue;
         const inside = at[0] >= view.left && at[0] <= view.right && at[1] >= view.bottom && at[1] <= view.top;
         if (inside)
           body.push(
-            `<circle cx="${px(at[0]).toFixed(1)}" cy="${py(at[1]).toFixed(1)}" r="5" fill="${stroke}" stroke="#fff"><title>${escapeMarkup(label)}</title></circle>`,
+            `<circle cx="${px(at[0]).toFixed(1)}" cy="${py(at[1]).toFixed(1)}" r="5" fill="${stroke}" stroke="#fff"><title>${escapeMarkup(label)}</title></circle><text x="${(px(at[0]) + 8).toFixed(1)}" y="${(py(at[1]) - 6).toFixed(1)}">${number}</text>`,
           );
-        legend.push({ label, mark: `<circle cx="13" cy="-4" r="5" fill="${stroke}"/>` });
+        legend.push({
+          label,
+          mark: `<circle cx="8" cy="-4" r="5" fill="${stroke}"/><text x="18">${number}</text>`,
+        });
         style++;
       }
     }
@@ -131,7 +136,7 @@ function curve(
   const xs = Array.from({ length: n }, (_, i) => view.left + (i - 0.5123) * dx);
   const ys = Array.from({ length: n }, (_, i) => view.bottom + (i - 0.5237) * dy);
   const values = ys.map((y) => xs.map((x) => value(x, y)));
-  const parts: string[] = [];
+  const segments: [string, string][] = [];
   for (let j = 0; j + 1 < n; j++)
     for (let i = 0; i + 1 < n; i++) {
       const corners = [
@@ -148,7 +153,30 @@ function curve(
         const t = v1 / (v1 - v2);
         cuts.push(`${px(x1 + t * (x2 - x1)).toFixed(1)} ${py(y1 + t * (y2 - y1)).toFixed(1)}`);
       }
-      for (let c = 0; c + 1 < cuts.length; c += 2) parts.push(`M${cuts[c]}L${cuts[c + 1]}`);
+      for (let c = 0; c + 1 < cuts.length; c += 2) segments.push([cuts[c]!, cuts[c + 1]!]);
     }
-  return parts.join('');
+  return chained(segments);
+}
+
+/** Segments with common ends as one path, so that dashes run on. */
+function chained(segments: readonly (readonly [string, string])[]): string {
+  const at = new Map<string, Set<number>>();
+  segments.forEach((ends, i) => {
+    for (const end of ends) at.set(end, (at.get(end) ?? new Set()).add(i));
+  });
+  const used = new Set<number>();
+  const follow = (from: string): string[] => {
+    const path: string[] = [];
+    for (let end = from; ; ) {
+      const next = [...(at.get(end) ?? [])].find((i) => !used.has(i));
+      if (next === undefined) return path;
+      used.add(next);
+      const [a, b] = segments[next]!;
+      end = a === end ? b : a;
+      path.push(end);
+    }
+  };
+  return segments
+    .flatMap(([a], i) => (used.has(i) ? [] : [`M${[...follow(a).reverse(), a, ...follow(a)].join('L')}`]))
+    .join('');
 }

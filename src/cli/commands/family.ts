@@ -1,9 +1,12 @@
 /** `holdfast family`: for which couplings does a charge appear? */
 
+import { existsSync, readFileSync, renameSync, writeFileSync } from 'node:fs';
 import { InputError, show } from '../../errors.ts';
+import type { Family } from '../../model/formula.ts';
 import { familyJson, familyLatex, printFamily } from '../../report/family.ts';
 import { type PlotWindow, plotFamily } from '../../report/family-plot.ts';
-import { classify } from '../../theory/family/classify.ts';
+import { classify, type FamilyState } from '../../theory/family/classify.ts';
+import { stateFromText, textFromState } from '../../theory/family/state.ts';
 import { type Command, type CommandInput, Exit } from '../command.ts';
 import { familyFromOptions, MODEL_HELP, MODEL_OPTIONS } from '../model-options.ts';
 import { writeFileWhole } from '../output-file.ts';
@@ -27,7 +30,12 @@ Family:
   --range K             largest range, in cells
   --json                every case for machines, and nothing else, on standard output
   --latex               the table of answers as a LaTeX tabular
+<<<<<<< HEAD
   --picture FILE        two free parameters: a map of the curves and points where more charges appear, as SVG
+=======
+  --plot FILE           two free parameters: a map of the curves and points where more charges appear, as SVG
+  --checkpoint FILE     keeps closed cases there; the same command, started again, goes on from them
+>>>>>>> 7a23d99 (Families: checkpoints, documentation, a thousand points a family in the long suite)
   --window A:B,C:D      what the map shows of the two parameters (-3:3,-3:3)
 
 Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
@@ -38,6 +46,7 @@ Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
     latex: { type: 'boolean' },
     picture: { type: 'string' },
     window: { type: 'string' },
+    checkpoint: { type: 'string' },
   },
   async run(input) {
     const range = rangeOption(input);
@@ -52,8 +61,14 @@ Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
         'two free parameters (give the others a value with --set)',
         `${members.parameters.length}`,
       );
+    const checkpoint = input.values['checkpoint'] as string | undefined;
+    const resume = checkpoint === undefined ? undefined : stateIn(checkpoint, members, range);
     const result = await classify(members, {
       range,
+      ...(resume === undefined ? {} : { resume }),
+      ...(checkpoint === undefined
+        ? {}
+        : { onState: (state) => replaceFile(checkpoint, textFromState(members, range, state)) }),
       signal: input.signal,
       onProgress({ open, closed }) {
         if (input.interactive) input.note(`\r\u001b[2Kcases: ${closed} closed, ${open} open`);
@@ -67,6 +82,24 @@ Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
     return Exit.done;
   },
 };
+
+function stateIn(path: string, members: Family, range: number): FamilyState | undefined {
+  return existsSync(path) ? stateFromText(members, range, readFileSync(path, 'utf8')) : undefined;
+}
+
+/** Old text or new at any moment, whenever the run is killed. */
+function replaceFile(path: string, text: string): void {
+  try {
+    writeFileSync(`${path}.part`, text);
+    renameSync(`${path}.part`, path);
+  } catch (error) {
+    throw new InputError(
+      '--checkpoint',
+      'a file that can be written',
+      `${show(path)}: ${(error as Error).message}`,
+    );
+  }
+}
 
 function windowOption({ values }: Pick<CommandInput, 'values'>): PlotWindow {
   const text = (values['window'] ?? '-3:3,-3:3') as string;
