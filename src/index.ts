@@ -172,13 +172,9 @@ export { stateFromText, textFromState } from './theory/family/state.ts';
 export {
   climbing,
   type LadderOptions,
-  type LadderOptions,
   type LadderProgress,
   ladder,
-  ladder,
   NoLadderError,
-  NoLadderError,
-  type Rung,
   type Rung,
 } from './theory/ladder.ts';
 export { PUBLISHED } from './theory/published/index.ts';

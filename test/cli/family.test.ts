@@ -27,7 +27,7 @@ describe('holdfast family', () => {
   it('prints JSON whose points and conditions the plain search confirms', () => {
     const plot = join(folder, 'map.svg');
     const state = join(folder, 'state.json');
-    const run = holdfast(FORMULA, '--range=3', '--json', `--plot=${plot}`, `--checkpoint=${state}`);
+    const run = holdfast(FORMULA, '--range=3', '--json', `--picture=${plot}`, `--checkpoint=${state}`);
     expect(run.stderr).toBe('');
     expect(run.status).toBe(0);
     const document = JSON.parse(run.stdout);
@@ -49,7 +49,11 @@ describe('holdfast family', () => {
   it.each([
     ['a coefficient that is no polynomial', ['XX / a + Z', '--range=3'], 'a division by a constant'],
     ['too many candidates', ['a XX + Z', '--range=9'], 'has 196,608 candidates'],
-    ['a map of three parameters', ['a XX + b YY + c Z', '--range=2', '--plot=x.svg'], 'two free parameters'],
+    [
+      'a map of three parameters',
+      ['a XX + b YY + c Z', '--range=2', '--picture=x.svg'],
+      'two free parameters',
+    ],
   ])('refuses %s', (_, args, message) => {
     const { status, stderr, stdout } = holdfast(...args);
     expect(stderr).toContain(message);

@@ -30,12 +30,8 @@ Family:
   --range K             largest range, in cells
   --json                every case for machines, and nothing else, on standard output
   --latex               the table of answers as a LaTeX tabular
-<<<<<<< HEAD
   --picture FILE        two free parameters: a map of the curves and points where more charges appear, as SVG
-=======
-  --plot FILE           two free parameters: a map of the curves and points where more charges appear, as SVG
   --checkpoint FILE     keeps closed cases there; the same command, started again, goes on from them
->>>>>>> 7a23d99 (Families: checkpoints, documentation, a thousand points a family in the long suite)
   --window A:B,C:D      what the map shows of the two parameters (-3:3,-3:3)
 
 Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
