@@ -128,7 +128,13 @@ export {
 } from './report/grouping.ts';
 export { resultToJson } from './report/json.ts';
 export { latexDensity, latexEquation, latexResult } from './report/latex.ts';
-export { latticeResultToJson, printLatticeResult, sitesText } from './report/lattice.ts';
+export {
+  allWavesToJson,
+  latticeResultToJson,
+  printAllWaves,
+  printLatticeResult,
+  sitesText,
+} from './report/lattice.ts';
 export { mathmlEquation } from './report/mathml.ts';
 export { type PageOptions, reportPage } from './report/page.ts';
 export { growthPicture, legendPicture, pictureOfCharge, pictureOfResult } from './report/picture.ts';
@@ -138,6 +144,7 @@ export { printCharge, printDensity, printResult, type TextOptions } from './repo
 export { CAUTIONS, verdictOf } from './report/verdict.ts';
 export { type BackgroundOptions, searchLattice } from './search/background.ts';
 export { type Estimate, estimate } from './search/estimate.ts';
+export { type AllWaves, allWaves, type ExceptionalWaves } from './search/lattice/all-waves.ts';
 export { type RealDensity, realForms } from './search/lattice/real-form.ts';
 export type { LatticeCharge, LatticeResult } from './search/lattice/result.ts';
 export {

@@ -11,6 +11,7 @@ import { documentFromOptions, settings } from './model-options.ts';
 
 export const LATTICE_OPTIONS = {
   wave: { type: 'string' },
+  'all-waves': { type: 'boolean' },
   period: { type: 'string' },
   open: { type: 'string' },
   ring: { type: 'string' },
@@ -22,6 +23,7 @@ export const LATTICE_OPTIONS = {
 export const LATTICE_HELP = `Beyond the uniform infinite chain:
   --period P            charges invariant under translation by P cells only
   --wave M/N            charges that translation by a period multiplies by e^(2πi M/N)
+  --all-waves           at which of all wave numbers there are charges, and how many; exact
   --open L              an open chain of L cells; each place has coefficients of its own
   --ring L              a ring of L cells, also a short one; --period 0 asks for no invariance
   --local FORMULA       with --open or --ring: terms in one place, "1/2 Z_0 + X_3 X_4"
@@ -41,7 +43,8 @@ export async function latticeFromOptions(
   range: number | undefined,
 ): Promise<{ model: LatticeModel; options: LatticeOptions }> {
   const { values } = input;
-  const text = (name: keyof typeof LATTICE_OPTIONS) => values[name] as string | undefined;
+  const text = (name: Exclude<keyof typeof LATTICE_OPTIONS, 'all-waves'>) =>
+    values[name] as string | undefined;
   const window = text('window') === undefined ? undefined : numbers('--window', text('window')!);
   if ((window === undefined) === (range === undefined))
     throw new InputError(

@@ -1,7 +1,9 @@
 /** Results on lattices, as text and for machines. */
 import { type Cyclotomic, CyclotomicField } from '../algebra/cyclotomic.ts';
+import type { Interval } from '../algebra/univariate.ts';
 import { LETTERS, letterAt, spanOf, type Word } from '../algebra/word.ts';
 import type { Box } from '../lattice/lattice.ts';
+import type { AllWaves } from '../search/lattice/all-waves.ts';
 import { realForms } from '../search/lattice/real-form.ts';
 import type { LatticeResult } from '../search/lattice/result.ts';
 
@@ -94,4 +96,53 @@ export function printLatticeResult(result: LatticeResult, fold = FOLD): string {
     'Absence of local charges supports thermalisation or chaos; by itself it proves neither.',
   );
   return `${lines.join('\n')}\n`;
+}
+
+/** Which wave numbers have charges, for machines; polynomials lowest power first. */
+export function allWavesToJson({ range, dimension, exceptions, candidates }: AllWaves): object {
+  return {
+    range,
+    dimensionElsewhere: dimension,
+    exceptions: exceptions.map(({ order, polynomial, points, dimension: own, cosines }) => ({
+      order,
+      polynomial: polynomial.map(String),
+      points,
+      dimension: own,
+      twoCosine: cosines.map(({ low, high, denominator }) => [
+        `${low}/${denominator}`,
+        `${high}/${denominator}`,
+      ]),
+    })),
+    candidates,
+  };
+}
+
+export function printAllWaves({ range, dimension, exceptions }: AllWaves): string {
+  const lines = [
+    `Sums Σ_j ω^j τ_j(q), q of range ≤ ${range}, that commute with H, at every ω on the unit circle:`,
+    '',
+    ...exceptions.map(({ order, polynomial, points, dimension: own, cosines }) =>
+      order === null
+        ? `  ${own} at ${points} points that are no roots of unity: roots of ${polynomialText(polynomial)}, 2 cos θ near ${cosines.map(decimal).join(', ')}`
+        : `  ${own} at ${order === 1 ? 'wave number 0' : order === 2 ? 'wave number π' : `the ${points} primitive roots of unity of order ${order}`}`,
+    ),
+    `  ${dimension} at every ${exceptions.length > 0 ? 'other ' : ''}point`,
+    '',
+    'Exact at every ω: no step is numerical or modular. Wider, quasilocal and non-local quantities are not covered.',
+    'Absence of local charges supports thermalisation or chaos; by itself it proves neither.',
+  ];
+  return `${lines.join('\n')}\n`;
+}
+
+function polynomialText(coefficients: readonly bigint[]): string {
+  return coefficients
+    .map((c, i) => (c === 0n ? '' : `${c}${i === 0 ? '' : i === 1 ? ' w' : ` w^${i}`}`))
+    .filter((term) => term !== '')
+    .join(' + ')
+    .replaceAll('+ -', '- ');
+}
+
+/** Six digits of the middle of an interval, for reading. */
+function decimal({ low, high, denominator }: Interval): string {
+  return (Number(low + high) / 2 / Number(denominator)).toFixed(6);
 }

@@ -3,11 +3,17 @@ import { assertCertifiable, certificateOf } from '../../certificate/certificate.
 import { InputError, LimitError, show } from '../../errors.ts';
 import { resultToJson } from '../../report/json.ts';
 import { latexResult } from '../../report/latex.ts';
-import { latticeResultToJson, printLatticeResult } from '../../report/lattice.ts';
+import {
+  allWavesToJson,
+  latticeResultToJson,
+  printAllWaves,
+  printLatticeResult,
+} from '../../report/lattice.ts';
 import { type PageOptions, reportPage } from '../../report/page.ts';
 import { pictureOfResult } from '../../report/picture.ts';
 import { printResult } from '../../report/text.ts';
 import { search as searchInBackground, searchLattice } from '../../search/background.ts';
+import { allWaves } from '../../search/lattice/all-waves.ts';
 import type { SearchResult } from '../../search/result.ts';
 import { checkWithProgress } from '../certificate-file.ts';
 import { type Command, type CommandInput, Exit } from '../command.ts';
@@ -117,6 +123,17 @@ async function runOnLattice(input: CommandInput): Promise<number> {
   const range = input.values['range'] === undefined ? undefined : rangeOption(input);
   const memory = gigabytesOption(input);
   const { model, options } = await latticeFromOptions(input, range);
+  if (input.values['all-waves'] === true) {
+    if (range === undefined || options.wave !== undefined || options.period !== undefined)
+      throw new InputError('--all-waves', '--range alone', 'another window, wave or period beside it');
+    const waves = allWaves(model, range, () => input.signal.throwIfAborted());
+    input.out(
+      input.values['json'] === true
+        ? `${JSON.stringify(allWavesToJson(waves), null, 2)}\n`
+        : printAllWaves(waves),
+    );
+    return Exit.done;
+  }
   const line = shareLine(input, 'searching');
   const result = await searchLattice(model, {
     ...options,
