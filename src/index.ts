@@ -79,6 +79,7 @@ export {
   type ChargeAlgebra,
   type Commutator,
   chargeAlgebra,
+  chargeAlgebraSteps,
   type Derivative,
   type Parities,
   paritiesOf,
@@ -98,6 +99,7 @@ export { type MazurBound, mazurBounds, type OverlapOptions } from './physics/ove
 export {
   type Correction,
   type CorrectionOptions,
+  correctionSteps,
   type NearestCharge,
   nearestCharge,
   type Residual,

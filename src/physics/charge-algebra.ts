@@ -55,24 +55,37 @@ export interface ChargeAlgebra {
   readonly derivatives: readonly Derivative[];
 }
 
-/** Cost: pairs of charges × the product of their numbers of strings × range. `onProgress` gets the share done; throwing stops. */
-export function chargeAlgebra(
-  result: SearchResult,
-  onProgress: (done: number) => void = () => {},
-): ChargeAlgebra {
+/** Cost: pairs of charges × the product of their numbers of strings × range. `chargeAlgebraSteps` can be stopped on its way. */
+export function chargeAlgebra(result: SearchResult): ChargeAlgebra {
+  const steps = chargeAlgebraSteps(result);
+  for (;;) {
+    const step = steps.next();
+    if (step.done) return step.value;
+  }
+}
+
+/** The same in steps, each the work for one charge; yields the share done. */
+export function* chargeAlgebraSteps(result: SearchResult): Generator<number, ChargeAlgebra> {
   const { charges, hamiltonian } = result;
   const { chain } = hamiltonian;
   const span = new Span();
   for (const { density } of charges) span.add(density);
   const commutators: Commutator[] = [];
-  charges.forEach((qa, a) => {
-    onProgress(a / charges.length);
-    charges.slice(a + 1).forEach((qb, i) => {
-      const density = chain.bracket(qa.density, qb.density).times(2);
-      if (!density.isZero())
-        commutators.push({ a, b: a + 1 + i, density, expansion: span.coordinates(density) });
+  const derivatives: Derivative[] = [];
+  for (const [a, qa] of charges.entries()) {
+    yield a / charges.length;
+    for (let b = a + 1; b < charges.length; b++) {
+      const density = chain.bracket(qa.density, charges[b]!.density).times(2);
+      if (!density.isZero()) commutators.push({ a, b, density, expansion: span.coordinates(density) });
+    }
+    const derivative = boostDerivative(hamiltonian, qa.density);
+    derivatives.push({
+      from: a,
+      density: derivative,
+      expansion: span.coordinates(derivative),
+      conserved: chain.bracket(hamiltonian.density, derivative).isZero(),
     });
-  });
+  }
   const directions: { density: Operator; norm: Rational }[] = [];
   for (const { density } of charges) {
     const direction = orthogonalTo(chain, density, directions);
@@ -84,15 +97,7 @@ export function chargeAlgebra(
     orthogonal: directions.map((d) => d.density),
     norms: directions.map((d) => d.norm),
     parities: charges.map(({ density }) => paritiesOf(chain, density)),
-    derivatives: charges.map(({ density }, from) => {
-      const derivative = boostDerivative(hamiltonian, density);
-      return {
-        from,
-        density: derivative,
-        expansion: span.coordinates(derivative),
-        conserved: chain.bracket(hamiltonian.density, derivative).isZero(),
-      };
-    }),
+    derivatives,
   });
 }
 

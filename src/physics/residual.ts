@@ -50,8 +50,6 @@ export interface Correction {
 export interface CorrectionOptions {
   /** Largest range of the correction, in cells. */
   readonly range: number;
-  /** Called before each range; throwing stops. */
-  readonly onProgress?: (range: number) => void;
 }
 
 /** More candidates than this are refused: the system is held in memory, about 2 kB a candidate. */
@@ -68,8 +66,21 @@ const MAX_ATTEMPTS = 12;
 export function smallestCorrection(
   h: Hamiltonian,
   candidate: Operator,
-  { range, onProgress }: CorrectionOptions,
+  options: CorrectionOptions,
 ): Correction | null {
+  const steps = correctionSteps(h, candidate, options);
+  for (;;) {
+    const step = steps.next();
+    if (step.done) return step.value;
+  }
+}
+
+/** The same in steps of a range each; yields the range that comes next, so that a caller can show it or stop. Errors as above. */
+export function* correctionSteps(
+  h: Hamiltonian,
+  candidate: Operator,
+  { range }: CorrectionOptions,
+): Generator<number, Correction | null> {
   if (!(Number.isInteger(range) && range >= 1))
     throw new InputError('correction', 'a range of one cell or more, a whole number', show(range));
   const q = h.chain.normalise(candidate);
@@ -82,7 +93,7 @@ export function smallestCorrection(
       throw new LimitError(
         `correction: range ${k} has ${candidateCount(h.chain.cell, k)} candidates, more than ${MAX_CANDIDATES}`,
       );
-    onProgress?.(k);
+    yield k;
     const words = representatives(h, k).filter(
       (word) => !(q.numerators.has(word) && h.chain.range(word) === own),
     );

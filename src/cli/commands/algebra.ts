@@ -1,12 +1,12 @@
 /** `holdfast algebra`: how the charges of a model relate. */
 import { textFromRational } from '../../algebra/rational.ts';
 import type { Hamiltonian } from '../../model/hamiltonian.ts';
-import { chargeAlgebra, type Sign } from '../../physics/charge-algebra.ts';
+import { chargeAlgebraSteps, type Sign } from '../../physics/charge-algebra.ts';
 import { labelCharges, type NamedSymmetries, namedSymmetries } from '../../physics/symmetries.ts';
 import { printDensity } from '../../report/text.ts';
+import { searchWithProgress, steps } from '../charge-options.ts';
 import { type Command, Exit } from '../command.ts';
 import { MODEL_HELP, MODEL_OPTIONS, modelFromOptions } from '../model-options.ts';
-import { searchWithProgress } from '../second-formula.ts';
 import { combination } from './residual.ts';
 import { rangeOption } from './search.ts';
 
@@ -34,7 +34,12 @@ Exit status: 0 answered, 1 a failure, 2 bad input.`,
     const range = rangeOption(input);
     const model = await modelFromOptions(input);
     const found = await searchWithProgress(input, model, range);
-    const { commutators, gram, orthogonal, norms, parities, derivatives } = chargeAlgebra(found);
+    const { commutators, gram, orthogonal, norms, parities, derivatives } = await steps(
+      input,
+      'relating the charges',
+      chargeAlgebraSteps(found),
+      (done) => done,
+    );
     const labels = labelCharges(found);
     const symmetries = namedSymmetries(model);
     if (input.values['json'] === true) {

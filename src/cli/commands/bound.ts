@@ -4,10 +4,10 @@ import { InputError, show } from '../../errors.ts';
 import { mazurBounds } from '../../physics/overlaps.ts';
 import { boundPicture } from '../../report/bound-picture.ts';
 import { decimalText } from '../../report/decimal.ts';
+import { modelAndFormula, searchWithProgress } from '../charge-options.ts';
 import { type Command, Exit } from '../command.ts';
 import { MODEL_HELP, MODEL_OPTIONS } from '../model-options.ts';
 import { writeFileWhole } from '../output-file.ts';
-import { modelAndFormula, searchWithProgress } from '../second-formula.ts';
 import { rangeOption } from './search.ts';
 
 export const bound: Command = {

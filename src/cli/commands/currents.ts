@@ -3,9 +3,9 @@
 import { InputError, show } from '../../errors.ts';
 import { currentOf } from '../../physics/currents.ts';
 import { printDensity } from '../../report/text.ts';
+import { searchWithProgress } from '../charge-options.ts';
 import { type Command, Exit } from '../command.ts';
 import { MODEL_HELP, MODEL_OPTIONS, modelFromOptions } from '../model-options.ts';
-import { searchWithProgress } from '../second-formula.ts';
 import { rangeOption } from './search.ts';
 
 export const currents: Command = {

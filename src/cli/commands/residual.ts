@@ -1,11 +1,11 @@
 /** `holdfast residual`: is this one conserved? */
 import { type Rational, textFromRational } from '../../algebra/rational.ts';
-import { nearestCharge, residual as residualOf, smallestCorrection } from '../../physics/residual.ts';
+import { correctionSteps, nearestCharge, residual as residualOf } from '../../physics/residual.ts';
 import { decimalText } from '../../report/decimal.ts';
 import { printDensity } from '../../report/text.ts';
+import { modelAndFormula, searchWithProgress, steps } from '../charge-options.ts';
 import { type Command, Exit } from '../command.ts';
 import { MODEL_HELP, MODEL_OPTIONS } from '../model-options.ts';
-import { modelAndFormula, searchWithProgress } from '../second-formula.ts';
 import { rangeOption } from './search.ts';
 
 export const residual: Command = {
@@ -34,7 +34,14 @@ Exit status: 0 answered (conserved or not), 1 a failure, 2 bad input.`,
     const { model, density } = await modelAndFormula(input, 'a candidate');
     const found = await searchWithProgress(input, model, range);
     const { conserved, commutator, expansion } = residualOf(model, density, found);
-    const correction = conserved ? null : smallestCorrection(model, density, { range });
+    const correction = conserved
+      ? null
+      : await steps(
+          input,
+          'looking for a correction',
+          correctionSteps(model, density, { range }),
+          (k) => k / (range + 1),
+        );
     const nearest = nearestCharge(found, density);
     if (input.values['json'] === true) {
       const answer = {

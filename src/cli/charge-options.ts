@@ -1,4 +1,4 @@
-/** Commands that take a model and one formula more: the last positional argument. */
+/** What the commands on charges share: a model and one formula more, searches, and work in steps. */
 import type { Operator } from '../algebra/operator.ts';
 import { InputError } from '../errors.ts';
 import { parseDensity } from '../model/formula.ts';
@@ -7,7 +7,8 @@ import { search } from '../search/background.ts';
 import type { SearchResult } from '../search/result.ts';
 import type { CommandInput } from './command.ts';
 import { modelFromOptions } from './model-options.ts';
-import { progressLine } from './progress.ts';
+import { giveWay } from './output-file.ts';
+import { progressLine, shareLine } from './progress.ts';
 
 /** The formula is read with the cell of the model. Its coefficients are numbers: `--set` belongs to the model. */
 export async function modelAndFormula(
@@ -34,4 +35,24 @@ export async function searchWithProgress(
 ): Promise<SearchResult> {
   const line = progressLine(input);
   return search(model, { range, signal: input.signal, onProgress: line.show }).finally(line.clear);
+}
+
+/** Runs work that comes in steps, with a progress line; the first interrupt stops it before the next step. */
+export async function steps<T>(
+  input: CommandInput,
+  what: string,
+  work: Generator<number, T>,
+  share: (step: number) => number,
+): Promise<T> {
+  const line = shareLine(input, what);
+  try {
+    for (;;) {
+      const step = work.next();
+      if (step.done) return step.value;
+      line.show(share(step.value));
+      await giveWay(what, input.signal);
+    }
+  } finally {
+    line.clear();
+  }
 }
