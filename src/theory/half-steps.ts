@@ -88,7 +88,7 @@ export class HalfStepGrowth {
   *#terms(
     string: number,
   ): Generator<{ output: number; value: bigint; dLeft: number; dRight: number; moved: number }> {
-    const { count, commutators, anticommutators, axis, field, denominator } = this.letters;
+    const { count, commutators, anticommutators, axis, field } = this.letters;
     const own = this.#split(string);
     const before = this.#ends(own, 0)!;
     // One site of room on either side.
@@ -131,7 +131,6 @@ export class HalfStepGrowth {
       for (const [b, q] of field)
         for (const [l, u] of commutators[sites[s]! * count + b]!)
           yield* emit([[s, l]], q * u * this.#fieldFactor);
-    void denominator;
   }
 
   /** Adds the column of `R − ωA` of one string. */
