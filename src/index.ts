@@ -119,7 +119,7 @@ export { boundPicture } from './report/bound-picture.ts';
 export { citation } from './report/citation.ts';
 export { decimalText } from './report/decimal.ts';
 export { printVerdict } from './report/every-range.ts';
-export { familyJson, familyLatex, printFamily } from './report/family.ts';
+export { familyJson, familyLatex, printEveryRange, printFamily } from './report/family.ts';
 export { type PlotWindow, plotFamily } from './report/family-plot.ts';
 export {
   type GroupedDensity,
@@ -176,6 +176,7 @@ export {
   type FamilyResult,
   type FamilyState,
 } from './theory/family/classify.ts';
+export { everyRangeOf, type LocusVerdict } from './theory/family/every-range.ts';
 export { type Answer, answersOf, type Locus } from './theory/family/loci.ts';
 export { stateFromText, textFromState } from './theory/family/state.ts';
 export {

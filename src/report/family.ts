@@ -3,7 +3,9 @@ import type { Polynomial } from '../algebra/polynomial.ts';
 import { textFromRational } from '../algebra/rational.ts';
 import { textFromWord } from '../algebra/word.ts';
 import type { FamilyCase, FamilyCharge, FamilyResult } from '../theory/family/classify.ts';
+import type { LocusVerdict } from '../theory/family/every-range.ts';
 import { type Answer, answersOf, type Locus } from '../theory/family/loci.ts';
+import type { EveryRangeVerdict } from '../theory/verdict.ts';
 import type { TextOptions } from './text.ts';
 import { CAUTIONS } from './verdict.ts';
 
@@ -12,6 +14,37 @@ export const FAMILY_CAUTIONS = [
   'Parameters are real. Dimensions count charges up to a range, the Hamiltonian among them.',
   ...CAUTIONS,
 ];
+
+/** The lines of `holdfast family --every-range`: one set after another. */
+export function printEveryRange({ family }: FamilyResult, verdicts: readonly LocusVerdict[]): string {
+  const names = family.parameters;
+  const lines = ['Every range, decided at one point of each set:', ''];
+  for (const { locus, point, verdict } of verdicts) {
+    const at = names.map((name, v) => `${name} = ${textFromRational(point[v]!)}`).join(', ');
+    lines.push(`  ${conditionText(locus, names)}`, `    ${everyRangeLine(verdict)}`, `    (at ${at})`);
+  }
+  return `${[
+    ...lines,
+    '',
+    'What a point excludes is excluded, range by range, at general points of its set: smaller sets, which may differ from range to range, are',
+    'not covered. Charges that exist at the point need not exist at others. Above the ranges of the table this is no theorem about all points.',
+  ].join('\n')}\n`;
+}
+
+function everyRangeLine(verdict: EveryRangeVerdict): string {
+  switch (verdict.kind) {
+    case 'none':
+      return `no charge of any range from ${verdict.from} on`;
+    case 'complete':
+      return `exactly ${count(verdict.perRange, 'charge')} of every range from ${verdict.from} on`;
+    case 'bounded':
+      return `at most ${count(verdict.bound.generic, 'charge')} of every range from ${verdict.bound.from} on, but for exceptions; existence is open`;
+    case 'by citation':
+      return `a published theorem applies: ${verdict.citation.theorem.source.reference}`;
+    case 'undecided':
+      return `undecided by this method: ${verdict.reason}`;
+  }
+}
 
 export function printFamily(result: FamilyResult, { fold = 12 }: TextOptions = {}): string {
   const { family, range, cases, minimumCells } = result;

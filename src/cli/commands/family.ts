@@ -3,9 +3,11 @@
 import { existsSync, readFileSync, renameSync, writeFileSync } from 'node:fs';
 import { InputError, show } from '../../errors.ts';
 import type { Family } from '../../model/formula.ts';
-import { familyJson, familyLatex, printFamily } from '../../report/family.ts';
+import { familyJson, familyLatex, printEveryRange, printFamily } from '../../report/family.ts';
 import { type PlotWindow, plotFamily } from '../../report/family-plot.ts';
 import { classify, type FamilyState } from '../../theory/family/classify.ts';
+import { everyRangeOf } from '../../theory/family/every-range.ts';
+import { answersOf } from '../../theory/family/loci.ts';
 import { stateFromText, textFromState } from '../../theory/family/state.ts';
 import { type Command, type CommandInput, Exit } from '../command.ts';
 import { familyFromOptions, MODEL_HELP, MODEL_OPTIONS } from '../model-options.ts';
@@ -28,6 +30,7 @@ ${MODEL_HELP}
 
 Family:
   --range K             largest range, in cells
+  --every-range         decides every range at a point of each set, after the table
   --json                every case for machines, and nothing else, on standard output
   --latex               the table of answers as a LaTeX tabular
   --picture FILE        two free parameters: a map of the curves and points where more charges appear, as SVG
@@ -42,6 +45,7 @@ Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
     latex: { type: 'boolean' },
     picture: { type: 'string' },
     window: { type: 'string' },
+    'every-range': { type: 'boolean' },
     checkpoint: { type: 'string' },
   },
   async run(input) {
@@ -50,6 +54,11 @@ Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
     const view = windowOption(input);
     if (input.values['json'] === true && input.values['latex'] === true)
       throw new InputError('command line', '--json or --latex', 'both');
+    if (
+      input.values['every-range'] === true &&
+      (input.values['json'] === true || input.values['latex'] === true)
+    )
+      throw new InputError('--every-range', 'the answer as text', '--json or --latex');
     const members = await familyFromOptions(input);
     if (plot !== undefined && members.parameters.length !== 2)
       throw new InputError(
@@ -75,6 +84,8 @@ Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
     if (plot !== undefined) await writeFileWhole('--picture', plot, [plotFamily(result, view)], input.signal);
     if (input.values['json'] === true) input.out(`${JSON.stringify(familyJson(result), null, 2)}\n`);
     else input.out(input.values['latex'] === true ? familyLatex(result) : printFamily(result));
+    if (input.values['every-range'] === true)
+      input.out(`\n${printEveryRange(result, [...everyRangeOf(members, answersOf(result))])}`);
     return Exit.done;
   },
 };

@@ -10,6 +10,7 @@ import {
   type FamilyResult,
   type FamilyState,
 } from '../../../src/theory/family/classify.ts';
+import { everyRangeOf } from '../../../src/theory/family/every-range.ts';
 import { answersOf, symmetriesOf } from '../../../src/theory/family/loci.ts';
 import { checkAt, pointOf } from '../../support/families.ts';
 import { property, type Random } from '../../support/random.ts';
@@ -125,6 +126,21 @@ function randomFamily(random: Random) {
     if (/a/.test(formula)) return parseFamily(formula);
   }
 }
+
+describe('every range, at a point of each set', () => {
+  it('knows the non-interacting, the integrable and the non-integrable sets of XYZ in a field', () => {
+    // arXiv:2411.02162 (2024): of the sets without free spins, the integrable ones are those with more than H up to range 3.
+    const verdicts = [...everyRangeOf(XYZ_IN_A_FIELD, xyzAnswers)];
+    expect(verdicts.length).toBeGreaterThan(8);
+    for (const { locus, verdict } of verdicts) {
+      const counts = locus.general.dimensionByRange;
+      if (counts[2] === 1) expect(verdict.kind).toBe('none');
+      if (counts[0] === 0 && counts[2]! > 1)
+        expect(verdict).toMatchObject({ kind: 'complete', perRange: counts[2]! - counts[1]! });
+    }
+    expect(verdicts[0]!.locus.equations).toEqual([]);
+  });
+});
 
 describe('symmetries of a family', () => {
   it('are exchanges of axes with their parameters, and signs', () => {
