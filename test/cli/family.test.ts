@@ -1,8 +1,9 @@
 import { spawnSync } from 'node:child_process';
-import { existsSync, mkdtempSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
+import { existsSync, mkdtempSync, readdirSync, readFileSync, rmSync, writeFileSync } from 'node:fs';
 import { tmpdir } from 'node:os';
 import { join } from 'node:path';
 import { afterAll, describe, expect, it } from 'vitest';
+import { checkNow } from '../../src/check/check.ts';
 import { parseFamily, parseModel } from '../../src/model/formula.ts';
 import { familyJson, familyLatex, printFamily } from '../../src/report/family.ts';
 import { plotFamily } from '../../src/report/family-plot.ts';
@@ -27,8 +28,21 @@ describe('holdfast family', () => {
   it('prints JSON whose points and conditions the plain search confirms', () => {
     const plot = join(folder, 'map.svg');
     const state = join(folder, 'state.json');
-    const run = holdfast(FORMULA, '--range=3', '--json', `--picture=${plot}`, `--checkpoint=${state}`);
-    expect(run.stderr).toBe('');
+    const proofs = join(folder, 'proofs');
+    const run = holdfast(
+      FORMULA,
+      '--range=3',
+      '--json',
+      `--picture=${plot}`,
+      `--checkpoint=${state}`,
+      `--certificates=${proofs}`,
+    );
+    expect(run.stderr).toBe(
+      `${result.cases.length - 1} certificates written and accepted; 1 cases have no rational point at hand, or no Hamiltonian.\n`,
+    );
+    for (const name of readdirSync(proofs))
+      expect(checkNow(readFileSync(join(proofs, name), 'utf8')).status).toBe('accepted');
+    expect(readdirSync(proofs).length).toBe(result.cases.length - 1);
     expect(run.status).toBe(0);
     const document = JSON.parse(run.stdout);
     expect(document).toEqual(JSON.parse(JSON.stringify(familyJson(result))));

@@ -1,11 +1,15 @@
 /** `holdfast family`: for which couplings does a charge appear? */
 
-import { existsSync, readFileSync, renameSync, writeFileSync } from 'node:fs';
-import { InputError, show } from '../../errors.ts';
-import type { Family } from '../../model/formula.ts';
+import { existsSync, mkdirSync, readFileSync, renameSync, writeFileSync } from 'node:fs';
+import { join } from 'node:path';
+import { certificateOf } from '../../certificate/certificate.ts';
+import { checkNow } from '../../check/check.ts';
+import { InputError, show, VerificationError } from '../../errors.ts';
+import { type Family, familyAt } from '../../model/formula.ts';
 import { familyJson, familyLatex, printEveryRange, printFamily } from '../../report/family.ts';
 import { type PlotWindow, plotFamily } from '../../report/family-plot.ts';
-import { classify, type FamilyState } from '../../theory/family/classify.ts';
+import { searchNow } from '../../search/search.ts';
+import { classify, type FamilyResult, type FamilyState } from '../../theory/family/classify.ts';
 import { everyRangeOf } from '../../theory/family/every-range.ts';
 import { answersOf } from '../../theory/family/loci.ts';
 import { stateFromText, textFromState } from '../../theory/family/state.ts';
@@ -34,6 +38,7 @@ Family:
   --json                every case for machines, and nothing else, on standard output
   --latex               the table of answers as a LaTeX tabular
   --picture FILE        two free parameters: a map of the curves and points where more charges appear, as SVG
+  --certificates DIR    writes, for a rational point of each case, the certificate of the plain search there, and checks it
   --checkpoint FILE     keeps closed cases there; the same command, started again, goes on from them
   --window A:B,C:D      what the map shows of the two parameters (-3:3,-3:3)
 
@@ -45,6 +50,7 @@ Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
     latex: { type: 'boolean' },
     picture: { type: 'string' },
     window: { type: 'string' },
+    certificates: { type: 'string' },
     'every-range': { type: 'boolean' },
     checkpoint: { type: 'string' },
   },
@@ -81,6 +87,8 @@ Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
     }).finally(() => {
       if (input.interactive) input.note('\r\u001b[2K');
     });
+    const certificates = input.values['certificates'] as string | undefined;
+    if (certificates !== undefined) input.note(await certify(result, certificates, input.signal));
     if (plot !== undefined) await writeFileWhole('--picture', plot, [plotFamily(result, view)], input.signal);
     if (input.values['json'] === true) input.out(`${JSON.stringify(familyJson(result), null, 2)}\n`);
     else input.out(input.values['latex'] === true ? familyLatex(result) : printFamily(result));
@@ -89,6 +97,37 @@ Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
     return Exit.done;
   },
 };
+
+/**
+ * One certificate a case with a rational point. At a point they prove both bounds; rank at a point bounds the rank at general points
+ * from below, so that of a case's point shows that general points of it have no more charges.
+ */
+async function certify(
+  { cases, family: members, range }: FamilyResult,
+  folder: string,
+  signal: AbortSignal,
+): Promise<string> {
+  try {
+    mkdirSync(folder, { recursive: true });
+  } catch (error) {
+    throw new InputError(
+      '--certificates',
+      'a folder that can be made',
+      `${show(folder)}: ${(error as Error).message}`,
+    );
+  }
+  let written = 0;
+  for (const [i, { point }] of cases.entries()) {
+    if (point === null || members.terms.every(([, p]) => p.evaluate(point).numerator === 0n)) continue;
+    const proof = await certificateOf(searchNow(familyAt(members, point), { range }), { signal });
+    const verdict = checkNow(proof);
+    if (verdict.status !== 'accepted')
+      throw new VerificationError(`family: the certificate of case ${i + 1} is ${verdict.status}`);
+    await writeFileWhole('--certificates', join(folder, `case-${i + 1}.json`), [proof], signal);
+    written++;
+  }
+  return `${written} certificates written and accepted; ${cases.length - written} cases have no rational point at hand, or no Hamiltonian.\n`;
+}
 
 function stateIn(path: string, members: Family, range: number): FamilyState | undefined {
   return existsSync(path) ? stateFromText(members, range, readFileSync(path, 'utf8')) : undefined;
