@@ -43,6 +43,7 @@ export function strings(count: number): string {
 
 /** Digits in threes, by commas. Written out, since the runtime's locale must not change a report. */
 export function grouped(count: number): string {
+  if (count >= 1e15) return `about ${count.toPrecision(3)}`;
   return String(count).replace(/\B(?=(\d{3})+$)/g, ',');
 }
 

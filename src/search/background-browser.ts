@@ -3,12 +3,15 @@
  * own, since a library cannot know where a page keeps its files. A page that must stay alive calls it in a worker; the source of the workbench
  * shows how, and ends the worker to cancel.
  */
-import { CancelledError, LimitError } from '../errors.ts';
+import { CancelledError, InputError, LimitError } from '../errors.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
+import type { LatticeModel } from '../model/lattice-model.ts';
 import type { BackgroundOptions } from './background.ts';
 import { estimate } from './estimate.ts';
+import type { LatticeResult } from './lattice/result.ts';
+import { estimateLattice, type LatticeOptions, searchLatticeNow } from './lattice/search.ts';
 import type { SearchResult } from './result.ts';
-import { searchNow } from './search.ts';
+import { methodFor, searchNow } from './search.ts';
 
 /** What a page may use unless told otherwise: browsers do not say what is free. */
 const MEMORY = 2e9;
@@ -16,26 +19,48 @@ const MEMORY = 2e9;
 /**
  * As `search` in Node; gives way once before it starts. `signal` is seen then, and where `onProgress` fires it.
  *
- * @throws LimitError, CancelledError, InputError as `search` in Node
+ * @throws LimitError, CancelledError, InputError as `search` in Node; InputError for a checkpoint, since a page has no folders
  */
 export async function search(h: Hamiltonian, options: BackgroundOptions): Promise<SearchResult> {
-  const { signal, memory = MEMORY, onProgress, ...rest } = options;
-  const need = estimate(h, options.range);
-  if (need.bytes > memory)
+  const { signal, memory, checkpoint, onProgress, ...rest } = options;
+  if (checkpoint !== undefined) throw new InputError('search', 'no checkpoint in a browser', checkpoint);
+  if (methodFor(h, options.range, options.method) !== 'growth')
+    refuse(estimate(h, options.range).bytes, memory);
+  await turn(signal);
+  return searchNow(h, { ...rest, onProgress: stoppable(onProgress, signal) });
+}
+
+/**
+ * `searchLatticeNow`, as `search`.
+ *
+ * @throws as `search`
+ */
+export async function searchLattice(
+  model: LatticeModel,
+  options: LatticeOptions & Pick<BackgroundOptions, 'signal' | 'memory'>,
+): Promise<LatticeResult> {
+  const { signal, memory, onProgress, ...rest } = options;
+  refuse(estimateLattice(model, rest).bytes, memory);
+  await turn(signal);
+  return searchLatticeNow(model, { ...rest, onProgress: stoppable(onProgress, signal) });
+}
+
+function refuse(bytes: number, memory = MEMORY): void {
+  const gigabytes = (value: number) => `${(value / 1e9).toPrecision(2)} GB`;
+  if (bytes > memory)
     throw new LimitError(
-      `search: range ${options.range} needs about ${(need.bytes / 1e9).toPrecision(2)} GB; ${(memory / 1e9).toPrecision(2)} GB may be used. ` +
-        'Give a larger memory limit to try all the same',
+      `search: needs about ${gigabytes(bytes)}; ${gigabytes(memory)} may be used. Give a larger memory limit to try all the same`,
     );
+}
+
+async function turn(signal: AbortSignal | undefined): Promise<void> {
   await new Promise((resolve) => setTimeout(resolve, 0));
-  const stopIfAborted = () => {
+  if (signal?.aborted) throw new CancelledError('search');
+}
+
+function stoppable<P>(onProgress: ((progress: P) => void) | undefined, signal: AbortSignal | undefined) {
+  return (progress: P): void => {
+    onProgress?.(progress);
     if (signal?.aborted) throw new CancelledError('search');
   };
-  stopIfAborted();
-  return searchNow(h, {
-    ...rest,
-    onProgress(progress) {
-      onProgress?.(progress);
-      stopIfAborted();
-    },
-  });
 }

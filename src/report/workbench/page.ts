@@ -4,6 +4,7 @@ import { HoldfastError, InputError, show } from '../../errors.ts';
 import { CATALOGUE } from '../../model/catalogue/index.ts';
 import { parseModel } from '../../model/formula.ts';
 import { estimate } from '../../search/estimate.ts';
+import { methodFor } from '../../search/search.ts';
 import { grouped } from '../verdict.ts';
 import type { Files, Reply, Request, SearchRequest } from './messages.ts';
 
@@ -157,7 +158,12 @@ function requestFromForm(): SearchRequest {
 function predict(): void {
   try {
     const request = requestFromForm();
-    const need = estimate(parseModel(request.formula, request), request.range);
+    const model = parseModel(request.formula, request);
+    if (methodFor(model, request.range) === 'growth') {
+      needs.textContent = 'Longer than an exhaustive search: needs what the answer needs.';
+      return;
+    }
+    const need = estimate(model, request.range);
     const time = need.seconds < 1 ? 'less than a second' : `about ${need.seconds.toPrecision(1)} s`;
     needs.textContent = `${grouped(need.candidates)} candidates, about ${Math.ceil(need.bytes / 1e6)} MB, ${time}`;
   } catch (error) {

@@ -5,7 +5,7 @@ import { HoldfastError, LimitError } from '../../errors.ts';
 import { parseModel } from '../../model/formula.ts';
 import { estimate } from '../../search/estimate.ts';
 import type { SearchResult } from '../../search/result.ts';
-import { searchNow } from '../../search/search.ts';
+import { methodFor, searchNow } from '../../search/search.ts';
 import { resultToJson } from '../json.ts';
 import { latexResult } from '../latex.ts';
 import { reportBody, reportPage } from '../page.ts';
@@ -36,12 +36,15 @@ function progress(what: string): (done: number) => void {
 function runSearch({ formula, cell, parameters, range, memory }: SearchRequest): void {
   last = undefined;
   const model = parseModel(formula, { cell, parameters });
-  const need = estimate(model, range);
-  if (need.bytes > memory)
+  // Growth needs what the answer needs, which nobody knows beforehand.
+  const need = methodFor(model, range) === 'growth' ? undefined : estimate(model, range);
+  if (need !== undefined && need.bytes > memory)
     throw new LimitError(
       `search: range ${range} needs about ${(need.bytes / 1e9).toPrecision(2)} GB, and this page may use ${(memory / 1e9).toPrecision(2)} GB. The command takes longer ranges`,
     );
-  const tell = progress(`Searching ${grouped(need.candidates)} candidates`);
+  const tell = progress(
+    need === undefined ? 'Searching' : `Searching ${grouped(need.candidates)} candidates`,
+  );
   const result = searchNow(model, { range, onProgress: ({ done }) => tell(done) });
   last = result;
   reply({
