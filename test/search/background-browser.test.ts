@@ -16,7 +16,9 @@ it('finds the same', async () => {
 });
 
 it('refuses, and stops, as the search of Node', async () => {
-  await expect(browser.search(model, { range: 9, method: 'exhaustive', memory: 1e6 })).rejects.toThrow(LimitError);
+  await expect(browser.search(model, { range: 9, method: 'exhaustive', memory: 1e6 })).rejects.toThrow(
+    LimitError,
+  );
   await expect(browser.search(model, { range: 3, signal: AbortSignal.abort() })).rejects.toThrow(
     CancelledError,
   );
