@@ -57,6 +57,11 @@ export { type Hamiltonian, hamiltonianOf } from './model/hamiltonian.ts';
 export { type LatticeFormulaOptions, parseBondModel, parseLatticeModel } from './model/lattice-formula.ts';
 export { chainModel, type LatticeModel, latticeModel, type PlacedStrings } from './model/lattice-model.ts';
 export {
+  type LatticeDocument,
+  latticeModelFromJson,
+  latticeModelJsonSchema,
+} from './model/lattice-schema.ts';
+export {
   type Bond,
   bondModel,
   type Couplings,

@@ -4,10 +4,11 @@ import { InputError, show } from '../errors.ts';
 import { type Extent, INFINITE } from '../lattice/lattice.ts';
 import { parseBondModel, parseLatticeModel } from '../model/lattice-formula.ts';
 import type { LatticeModel } from '../model/lattice-model.ts';
+import { latticeModelFromJson } from '../model/lattice-schema.ts';
 import { LATTICES, type LatticeName } from '../model/lattices.ts';
 import type { LatticeOptions } from '../search/lattice/search.ts';
 import type { CommandInput } from './command.ts';
-import { documentFromOptions, settings } from './model-options.ts';
+import { documentFromOptions, readText, settings } from './model-options.ts';
 
 export const LATTICE_OPTIONS = {
   wave: { type: 'string' },
@@ -52,6 +53,23 @@ export async function latticeFromOptions(
       '--range K or --window A,B',
       window === undefined ? 'neither' : 'both',
     );
+  const [period, wave] = [text('period'), text('wave')];
+  const asked = {
+    ...(period === undefined ? {} : { period: numbers('--period', period) }),
+    ...(wave === undefined ? {} : { wave: wave.split(',') }),
+  };
+  const file = values['model'] as string | undefined;
+  if (file !== undefined) {
+    const json = await readText(file);
+    if (/"lattice"\s*:/.test(json)) {
+      for (const option of ['open', 'ring', 'local', 'lattice'] as const)
+        if (text(option) !== undefined)
+          throw new InputError(`--${option}`, 'the lattice of the JSON model alone', 'both');
+      const model = latticeModelFromJson(json, settings(input));
+      return { model, options: { window: window ?? [range!], ...asked } };
+    }
+    if (file === '-') throw new InputError('--model', 'a file, or a model with "lattice"', 'standard input');
+  }
   const name = text('lattice');
   if (name !== undefined && !Object.hasOwn(LATTICES, name))
     throw new InputError('--lattice', Object.keys(LATTICES).join(', '), show(name));
@@ -83,13 +101,11 @@ export async function latticeFromOptions(
           ...(local === undefined ? {} : { local }),
         })
       : parseBondModel(name as LatticeName, document.formula, { extents, parameters });
-  const [period, wave] = [text('period'), text('wave')];
   return {
     model,
     options: {
       window: sizes,
-      ...(period === undefined ? {} : { period: numbers('--period', period) }),
-      ...(wave === undefined ? {} : { wave: wave.split(',') }),
+      ...asked,
     },
   };
 }

@@ -81,7 +81,7 @@ export function settings({ values }: ModelInput): Map<string, Exact> {
 }
 
 /** A file, or standard input for `-`, as text; stops at the limit of a model instead of filling memory. */
-async function readText(path: string): Promise<string> {
+export async function readText(path: string): Promise<string> {
   const who = path === '-' ? 'standard input' : path;
   const chunks: Buffer[] = [];
   let length = 0;

@@ -28,10 +28,10 @@ import { PARAMETER_NAME } from './tokens.ts';
 
 const EXACT = 'expected an exact number: an integer, or a text such as "1/3" or "0.35"';
 /** Printable text: control characters would reach terminals and pages. */
-const LINE = /^[^\p{Cc}]*$/u;
-const LINES = /^(?:[^\p{Cc}]|[\n\t])*$/u;
+export const LINE = /^[^\p{Cc}]*$/u;
+export const LINES = /^(?:[^\p{Cc}]|[\n\t])*$/u;
 
-const number = z
+export const number = z
   .union(
     [
       z
@@ -163,7 +163,7 @@ export function jsonFromModel(
   };
 }
 
-function parseJson(text: string): unknown {
+export function parseJson(text: string): unknown {
   if (text.length > MAX_MODEL_LENGTH)
     throw new InputError('model', `at most ${MAX_MODEL_LENGTH} characters`, `${text.length}`);
   try {
@@ -173,7 +173,7 @@ function parseJson(text: string): unknown {
   }
 }
 
-function hasPrototypeKey(value: unknown): boolean {
+export function hasPrototypeKey(value: unknown): boolean {
   return typeof value === 'object' && value !== null && Object.hasOwn(value, '__proto__');
 }
 
@@ -197,11 +197,11 @@ function termOf(term: { word: string; coefficient: string | number }): [Word, Ra
   return [wordFromText(term.word), exact(term.coefficient)];
 }
 
-function pathOf(path: readonly PropertyKey[]): string {
+export function pathOf(path: readonly PropertyKey[]): string {
   return path.map((key) => (typeof key === 'number' ? `[${key}]` : `.${String(key)}`)).join('');
 }
 
-function wording(issue: z.core.$ZodIssue): string {
+export function wording(issue: z.core.$ZodIssue): string {
   if (issue.code === 'unrecognized_keys') return 'no other keys';
   if (issue.code === 'invalid_key') return 'the name of a parameter';
   return issue.message
@@ -210,7 +210,7 @@ function wording(issue: z.core.$ZodIssue): string {
 }
 
 /** What stands at the path of an issue; reads own properties only. */
-function shown(root: unknown, issue: z.core.$ZodIssue): string {
+export function shown(root: unknown, issue: z.core.$ZodIssue): string {
   if (issue.code === 'unrecognized_keys') return issue.keys.map((key) => show(key)).join(', ');
   let value = root;
   for (const key of issue.path) {
