@@ -64,29 +64,3 @@ function stoppable<P>(onProgress: ((progress: P) => void) | undefined, signal: A
     if (signal?.aborted) throw new CancelledError('search');
   };
 }
-
-/** As `searchLattice` in Node. @throws as `search` */
-export async function searchLattice(
-  model: LatticeModel,
-  options: LatticeOptions & Pick<BackgroundOptions, 'signal' | 'memory'>,
-): Promise<LatticeResult> {
-  const { signal, memory = MEMORY, onProgress, ...rest } = options;
-  const need = estimateLattice(model, rest);
-  if (need.bytes > memory)
-    throw new LimitError(
-      `search: the window needs about ${(need.bytes / 1e9).toPrecision(2)} GB; ${(memory / 1e9).toPrecision(2)} GB may be used. ` +
-        'Give a larger memory limit to try all the same',
-    );
-  await new Promise((resolve) => setTimeout(resolve, 0));
-  const stopIfAborted = () => {
-    if (signal?.aborted) throw new CancelledError('search');
-  };
-  stopIfAborted();
-  return searchLatticeNow(model, {
-    ...rest,
-    onProgress(progress) {
-      onProgress?.(progress);
-      stopIfAborted();
-    },
-  });
-}
