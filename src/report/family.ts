@@ -46,6 +46,7 @@ function everyRangeLine(verdict: EveryRangeVerdict): string {
   }
 }
 
+/** The table of answers, the charges at a general point of each set, what it all rests on, and the cautions. */
 export function printFamily(result: FamilyResult, { fold = 12 }: TextOptions = {}): string {
   const { family, range, cases, minimumCells } = result;
   const answers = answersOf(result);

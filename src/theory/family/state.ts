@@ -20,6 +20,7 @@ function taskOf({ chain, parameters, terms }: Family, range: number): string {
   ]);
 }
 
+/** The state as JSON: exact, and bound to its family and range. `stateFromText` reads it back. */
 export function textFromState(family: Family, range: number, { open, closed }: FamilyState): string {
   const p = (q: Polynomial): PolynomialText =>
     [...q.terms(family.parameters.length)].map(([exponents, c]) => [exponents, textFromRational(c)]);
@@ -41,7 +42,7 @@ export function textFromState(family: Family, range: number, { open, closed }: F
   });
 }
 
-/** @throws InputError when the text is no state, or one of another family or range */
+/** A state that `textFromState` has written. @throws InputError when the text is none, or one of another family or range */
 export function stateFromText(family: Family, range: number, text: string): FamilyState {
   const p = (terms: PolynomialText): Polynomial => Polynomial.of(terms);
   const where = (w: {
