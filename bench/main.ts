@@ -1,6 +1,7 @@
 /** `npm run bench`: see `USAGE`. Exit status 1 when a run fails or gives an answer that is known to be wrong. */
 import { parseArgs } from 'node:util';
 import { benchExternal } from './external/external.ts';
+import { benchLattice } from './lattice.ts';
 import { machine } from './measure.ts';
 import { MODELS } from './models.ts';
 import type { BenchOptions } from './options.ts';
@@ -11,6 +12,7 @@ const BENCHES: Readonly<
   Record<string, { readonly what: string; run(options: BenchOptions): Promise<void> }>
 > = {
   search: { what: 'the exhaustive search, beside one compiled pass over all non-zeros', run: benchSearch },
+  lattice: { what: 'other lattices, and the uniform chain through both engines', run: benchLattice },
   external: { what: 'the same matrices through general-purpose exact libraries', run: benchExternal },
 };
 

@@ -16,7 +16,7 @@ import { hashOf } from './space.ts';
 /** Most buckets at a time: 5 bytes each. */
 const MAX_BUCKETS = 2 ** 27;
 
-/** Buckets a candidate: about as many as it has outputs. */
+/** Buckets a candidate. Fewer than its outputs: 8, 32 and 64 took 5.5, 6.0 and 7.2 s on the 3 × 3 square. */
 const BUCKETS_PER_CANDIDATE = 8;
 
 const MAX_ROUNDS = 6;
