@@ -184,7 +184,11 @@ function printed(result: SearchResult, { values, colour, width }: CommandInput):
 export function rangeOption({ values }: Pick<CommandInput, 'values'>): number {
   const text = values['range'];
   if (typeof text !== 'string' || !/^[1-9]\d{0,3}$/.test(text))
-    throw new InputError('--range', 'a whole number of cells, 1 or more', show(text));
+    throw new InputError(
+      '--range',
+      'a whole number of cells, 1 or more',
+      text === undefined ? 'no range' : show(text),
+    );
   return Number(text);
 }
 
