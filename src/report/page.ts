@@ -9,7 +9,7 @@ import { mathmlCombination, mathmlEquation, mathmlName } from './mathml.ts';
 import { growthPicture, legendPicture, pictureOfCharge } from './picture.ts';
 import { STORY_LIMIT, storyOf, tellLayer, tellStep } from './story.ts';
 import { foldGroups, printDensity, restText } from './text.ts';
-import { addedByRange, CAUTIONS, grouped, strings, validityOf, verdictOf } from './verdict.ts';
+import { addedByRange, byLemma, CAUTIONS, grouped, strings, validityOf, verdictOf } from './verdict.ts';
 
 export interface PageOptions {
   /** Heading; the model's formula when absent. */
@@ -69,7 +69,7 @@ export function reportBody(result: SearchResult, options: PageOptions = {}): str
       ? [section('growth', 'How charges grow', [`<figure>${growthPicture(result)}</figure>`])]
       : []),
     section('proof', 'Why there are no others', [
-      `<p>The coefficients of ${grouped(result.candidates)} candidate strings are unknowns, and every string in [H, Q] is an equation. ${charges.length === 0 ? 'The' : `From below: ${charges.length === 1 ? 'the charge was' : `the ${charges.length} charges were`} multiplied out with H again, in integers, and ${charges.length === 1 ? 'commutes' : 'they commute'}. From above: the`} rank of the equations modulo the prime ${result.primes[0]} is ${grouped(result.candidates - charges.length)}. A rank modulo a prime is never above the rank over the rationals, so no more than ${charges.length} independent charge${charges.length === 1 ? '' : 's'} can exist.</p>`,
+      `<p>The coefficients of ${grouped(result.candidates)} candidate strings are unknowns${byLemma(result)}, and every string in [H, Q] is an equation. ${charges.length === 0 ? 'The' : `From below: ${charges.length === 1 ? 'the charge was' : `the ${charges.length} charges were`} multiplied out with H again, in integers, and ${charges.length === 1 ? 'commutes' : 'they commute'}. From above: the`} rank of the equations modulo the prime ${result.primes[0]} is ${grouped(result.candidates - charges.length)}. A rank modulo a prime is never above the rank over the rationals, so no more than ${charges.length} independent charge${charges.length === 1 ? '' : 's'} can exist.</p>`,
       storySection(result),
     ]),
     section('certificate', 'Certificate', [

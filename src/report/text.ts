@@ -4,7 +4,16 @@ import type { Hamiltonian } from '../model/hamiltonian.ts';
 import type { Charge, SearchResult } from '../search/result.ts';
 import { linesOf, tokensOf, tokenText } from './expression.ts';
 import { type GroupedDensity, groupTerms, type TermGroup } from './grouping.ts';
-import { addedByRange, CAUTIONS, expansionText, grouped, strings, validityOf, verdictOf } from './verdict.ts';
+import {
+  addedByRange,
+  byLemma,
+  CAUTIONS,
+  expansionText,
+  grouped,
+  strings,
+  validityOf,
+  verdictOf,
+} from './verdict.ts';
 
 export interface TextOptions {
   /** Escape sequences for bold and faint. They only repeat what the words say. */
@@ -39,7 +48,7 @@ export function printResult(result: SearchResult, options: TextOptions = {}): st
     expansionText(result),
     `New charges by range  ${counts}   (in all ${result.charges.length})`,
     validityOf(result),
-    `Proved by exact re-multiplication of every charge and the rank of the equations modulo ${result.primes[0]}, among ${grouped(result.candidates)} candidates.`,
+    `Proved by exact re-multiplication of every charge and the rank of the equations modulo ${result.primes[0]}, among ${grouped(result.candidates)} candidates${byLemma(result)}.`,
   ];
   paragraphs.push(notes.flatMap((line) => prose(line)).join('\n'));
   paragraphs.push(CAUTIONS.flatMap((line) => prose(line, 2)).join('\n'));

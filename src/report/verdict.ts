@@ -64,3 +64,8 @@ export function stringsByRange(
   }
   return counts;
 }
+
+/** A search along growth sees part of the equations and takes the rest from a lemma: it has to say so. */
+export function byLemma({ method }: SearchResult): string {
+  return method === 'growth' ? ', most of which the lifting lemma rules out unseen (docs/theory.md)' : '';
+}
