@@ -106,9 +106,9 @@ export function estimateLattice(model: LatticeModel, options: LatticeOptions): L
   const keys = 4 * space.limbs * candidates;
   return {
     candidates,
-    // Measured: runtime and code, keys and their marks, buckets.
+    // Runtime and code, keys and their marks, buckets.
     bytes: Math.round(90e6 + keys + 2 * candidates + 5 * bucketCount(candidates)),
-    // Measured: nanoseconds a candidate and term that touches a window.
+    // Rough, from runs of small windows: nanoseconds a candidate and term that touches a window.
     seconds: (candidates * 900 * Math.max(1, model.repeated.length)) / 1e9,
   };
 }
