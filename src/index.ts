@@ -150,7 +150,7 @@ export { type Story, type StoryLayer, type StoryStep, storyOf, tellLayer, tellSt
 export { printCharge, printDensity, printResult, type TextOptions } from './report/text.ts';
 export { CAUTIONS, verdictOf } from './report/verdict.ts';
 export { type BackgroundOptions, searchLattice } from './search/background.ts';
-export { type Estimate, estimate } from './search/estimate.ts';
+export { candidateCount, type Estimate, estimate } from './search/estimate.ts';
 export { type AllWaves, allWaves, type ExceptionalWaves } from './search/lattice/all-waves.ts';
 export { type RealDensity, realForms } from './search/lattice/real-form.ts';
 export type { LatticeCharge, LatticeResult } from './search/lattice/result.ts';
@@ -164,7 +164,7 @@ export {
 export type { Translations } from './search/lattice/space.ts';
 export { EquationMatrix, type MatrixSize } from './search/matrix.ts';
 export type { Charge, Method, SearchResult } from './search/result.ts';
-export { candidateCount, leadingWord, type SearchOptions } from './search/search.ts';
+export { leadingWord, type SearchOptions } from './search/search.ts';
 export type { OnProgress, Progress } from './search/sweep.ts';
 export { everyRangeCertificate } from './theory/certificate.ts';
 export type { Citation, PublishedTheorem } from './theory/citations.ts';

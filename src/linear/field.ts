@@ -68,3 +68,8 @@ export function isPrime(n: number): boolean {
 export function* primesBelow(bound = PRIME_BOUND): Generator<number> {
   for (let n = bound - 1; n > 2; n--) if (isPrime(n)) yield n;
 }
+
+/** Their fields, in the same order: what a proof that may be unlucky goes through. */
+export function* primeFieldsBelow(bound = PRIME_BOUND): Generator<Field> {
+  for (const p of primesBelow(bound)) yield primeField(p);
+}

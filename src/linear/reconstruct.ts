@@ -1,5 +1,5 @@
 /** From residues to rationals: Chinese remaindering and rational reconstruction, in integers throughout. */
-import type { Rational } from '../algebra/rational.ts';
+import { gcd, type Rational } from '../algebra/rational.ts';
 
 /** The residue modulo m·p of the number that is `a` modulo m and `b` modulo p, for coprime m and p. `mInverse` is 1/m modulo p. */
 export function chineseRemainder(a: bigint, m: bigint, b: bigint, p: bigint, mInverse: bigint): bigint {
@@ -30,11 +30,7 @@ export function rationalReconstruction(
   if (denominator === 0n || denominator > bound) return undefined;
   // A common factor of the pair would divide m; then there is no fraction with this residue.
   if (r1 === 0n) return denominator === 1n ? { numerator: 0n, denominator: 1n } : undefined;
-  for (let x = r1, y = denominator; ; [x, y] = [y, x % y])
-    if (y === 0n) {
-      if (x !== 1n) return undefined;
-      break;
-    }
+  if (gcd(r1, denominator) !== 1n) return undefined;
   return { numerator: t1 < 0n ? -r1 : r1, denominator };
 }
 

@@ -19,3 +19,45 @@ export interface SparseVector {
   readonly columns: number[];
   readonly values: number[];
 }
+
+/** Distinct entries in the order they first come up: the `values` of a matrix while it is built. */
+export class DistinctValues {
+  readonly values: bigint[] = [];
+  readonly #index = new Map<bigint, number>();
+
+  indexOf(value: bigint): number {
+    let index = this.#index.get(value);
+    if (index === undefined) {
+      index = this.values.length;
+      this.#index.set(value, index);
+      this.values.push(value);
+    }
+    return index;
+  }
+}
+
+/** Entries line by line, lines being all rows or all columns: line i is the stretch `start[i] … start[i + 1]`. */
+export interface Lines {
+  readonly start: Uint32Array;
+  /** Position across the lines, of each entry. */
+  readonly index: Uint32Array;
+  readonly value: Uint16Array;
+}
+
+/** Rows from columns, or columns from rows. A counting sort: linear, and each new line has its entries in rising order. */
+export function transpose({ start, index, value }: Lines, lines: number): Lines {
+  const size = start[start.length - 1]!;
+  const newStart = new Uint32Array(lines + 1);
+  for (let i = 0; i < size; i++) newStart[index[i]! + 1]!++;
+  for (let line = 0; line < lines; line++) newStart[line + 1]! += newStart[line]!;
+  const next = newStart.slice();
+  const newIndex = new Uint32Array(size);
+  const newValue = new Uint16Array(size);
+  for (let line = 0; line + 1 < start.length; line++)
+    for (let i = start[line]!; i < start[line + 1]!; i++) {
+      const at = next[index[i]!]!++;
+      newIndex[at] = line;
+      newValue[at] = value[i]!;
+    }
+  return { start: newStart, index: newIndex, value: newValue };
+}

@@ -3,12 +3,10 @@ import { Operator } from '../algebra/operator.ts';
 import { type Rational, rational } from '../algebra/rational.ts';
 import type { Word } from '../algebra/word.ts';
 import { InputError, LimitError, show, VerificationError } from '../errors.ts';
-import { primeField, primesBelow } from '../linear/field.ts';
-import type { SparseMatrix } from '../linear/sparse.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
-import { liftCharges, modularBasis } from '../search/charges.ts';
+import { candidateCount } from '../search/estimate.ts';
+import { exactNullSpace, MatrixBuilder } from '../search/null-space.ts';
 import type { SearchResult } from '../search/result.ts';
-import { candidateCount } from '../search/search.ts';
 import { innerProduct } from './inner-product.ts';
 import { orthogonalTo } from './overlaps.ts';
 import { Span } from './span.ts';
@@ -54,7 +52,6 @@ export interface CorrectionOptions {
 
 /** More candidates than this are refused: the system is held in memory, about 2 kB a candidate. */
 const MAX_CANDIDATES = 300_000;
-const MAX_ATTEMPTS = 12;
 
 /**
  * The correction P of smallest range ≤ `range` with `[H, Q + P] = 0`, or null: a proof that there is none that leaves the strings of Q of its full
@@ -125,61 +122,15 @@ function solve(h: Hamiltonian, image: Operator, words: readonly Word[]): Operato
     image,
     ...words.map((word) => h.chain.bracket(h.density, Operator.fromIntegers([[word, 1n]]))),
   ];
-  const matrix = matrixOf(columns.map((column) => column.times(unit)));
-  const fields = (function* () {
-    for (const p of primesBelow()) yield primeField(p);
-  })();
-  for (let attempt = 0; attempt < MAX_ATTEMPTS; attempt++) {
-    const field = fields.next().value!;
-    const lifted = liftCharges(
-      matrix,
-      null,
-      { basis: modularBasis(matrix, null, field), field },
-      fields,
-      () => {},
-    );
-    if (!lifted.ok) continue;
-    const vector = lifted.charges.find(({ columns: at }) => at[0] === 0);
-    if (vector === undefined) return null;
-    const own = vector.values[0]!;
-    return Operator.fromTerms(
-      vector.columns.slice(1).map((c, i) => [words[c - 1]!, rational(vector.values[i + 1]!, own)] as const),
-    );
-  }
-  throw new VerificationError(`correction: no prime gave matching bounds in ${MAX_ATTEMPTS} attempts`);
-}
-
-function matrixOf(columns: readonly Operator[]): SparseMatrix {
-  const rows = new Map<Word, [column: number, value: number][]>();
-  const values: bigint[] = [];
-  const index = new Map<bigint, number>();
-  columns.forEach((operator, column) => {
-    for (const [word, value] of operator.numerators) {
-      let v = index.get(value);
-      if (v === undefined) {
-        v = values.push(value) - 1;
-        if (v > 0xffff) throw new LimitError('correction: more than 65536 different entries');
-        index.set(value, v);
-      }
-      const row = rows.get(word);
-      if (row === undefined) rows.set(word, [[column, v]]);
-      else row.push([column, v]);
-    }
-  });
-  const entries = [...rows.values()];
-  const start = new Uint32Array(entries.length + 1);
-  entries.forEach((row, i) => {
-    start[i + 1] = start[i]! + row.length;
-  });
-  const flat = entries.flat();
-  return {
-    columns: columns.length,
-    rows: entries.length,
-    start,
-    column: Uint32Array.from(flat, ([c]) => c),
-    value: Uint16Array.from(flat, ([, v]) => v),
-    values,
-  };
+  const matrix = new MatrixBuilder<Word>();
+  for (const [column, operator] of columns.entries())
+    for (const [word, value] of operator.times(unit).numerators) matrix.add(word, column, value);
+  const vector = exactNullSpace(matrix.finish(columns.length)).find(({ columns: at }) => at[0] === 0);
+  if (vector === undefined) return null;
+  const own = vector.values[0]!;
+  return Operator.fromTerms(
+    vector.columns.slice(1).map((c, i) => [words[c - 1]!, rational(vector.values[i + 1]!, own)] as const),
+  );
 }
 
 export interface NearestCharge {

@@ -4,8 +4,8 @@ import { divide, type Rational, rational, textFromRational } from '../algebra/ra
 import { commute, firstSpin, letterAt, product, textFromWord, type Word, weightOf } from '../algebra/word.ts';
 import type { Chain } from '../lattice/chain.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
+import { candidateCount } from '../search/estimate.ts';
 import type { SearchResult } from '../search/result.ts';
-import { candidateCount } from '../search/search.ts';
 import { localCommutator } from './currents.ts';
 import { bilinearCharges, freeFermions } from './free-fermions.ts';
 import { relations, Span } from './span.ts';

@@ -4,7 +4,7 @@ import type { Rational } from '../algebra/rational.ts';
 import type { Chain } from '../lattice/chain.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
 import type { SearchResult } from '../search/result.ts';
-import { linesOf, type Token, tokensOf } from './expression.ts';
+import { linesOf, type Token, tokensOf, tokenText } from './expression.ts';
 import { groupTerms, wordText } from './grouping.ts';
 import { addedByRange, CAUTIONS, strings, validityOf, verdictOf } from './verdict.ts';
 
@@ -69,22 +69,9 @@ function combination(coefficients: readonly Rational[]): string {
 }
 
 function latexToken(chain: Chain, token: Token): string {
-  switch (token.kind) {
-    case 'plus':
-      return ' + ';
-    case 'minus':
-      return ' - ';
-    case 'negative':
-      return '-';
-    case 'open':
-      return '(';
-    case 'close':
-      return ')';
-    case 'factor':
-      return `${latexRational(token.value)}\\,`;
-    case 'word':
-      return `\\mathrm{${cells(chain, wordText(chain, token.word))}}`;
-  }
+  if (token.kind === 'factor') return `${latexRational(token.value)}\\,`;
+  if (token.kind === 'word') return `\\mathrm{${cells(chain, wordText(chain, token.word))}}`;
+  return tokenText(chain, token);
 }
 
 /** A thin space between cells of several spins. */

@@ -2,7 +2,7 @@
  * The equations of a search restricted to some candidates, as a sparse matrix: columns in canonical order, one row for every
  * output that a listed candidate reaches. Memory: about 20 bytes a non-zero while it is built.
  */
-import type { SparseMatrix } from '../linear/sparse.ts';
+import { type SparseMatrix, transpose } from '../linear/sparse.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
 import { Neighbourhood, windowTable } from './windows.ts';
 
@@ -43,27 +43,15 @@ export function assemble(
     }
     columnStart[column + 1] = entries;
   }
-  // Columns to rows: a counting sort keeps the columns of a row in order.
-  const start = new Uint32Array(rowOf.size + 1);
-  for (let i = 0; i < entries; i++) start[rows[i]! + 1]!++;
-  for (let row = 0; row < rowOf.size; row++) start[row + 1]! += start[row]!;
-  const next = start.slice();
-  const columnOf = new Uint32Array(entries);
-  const entryOf = new Uint16Array(entries);
-  for (let column = 0; column < strings.length; column++)
-    for (let i = columnStart[column]!; i < columnStart[column + 1]!; i++) {
-      const at = next[rows[i]!]!++;
-      columnOf[at] = column;
-      entryOf[at] = value[i]!;
-    }
+  const byRow = transpose({ start: columnStart, index: rows, value }, rowOf.size);
   return {
     strings,
     matrix: {
       columns: strings.length,
       rows: rowOf.size,
-      start,
-      column: columnOf,
-      value: entryOf,
+      start: byRow.start,
+      column: byRow.index,
+      value: byRow.value,
       values: table.values,
     },
   };

@@ -3,11 +3,11 @@
  * own, since a library cannot know where a page keeps its files. A page that must stay alive calls it in a worker; the source of the workbench
  * shows how, and ends the worker to cancel.
  */
-import { CancelledError, InputError, LimitError } from '../errors.ts';
+import { CancelledError, InputError } from '../errors.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
 import type { LatticeModel } from '../model/lattice-model.ts';
 import type { BackgroundOptions } from './background.ts';
-import { estimate } from './estimate.ts';
+import { estimate, requireMemory } from './estimate.ts';
 import type { LatticeResult } from './lattice/result.ts';
 import { estimateLattice, type LatticeOptions, searchLatticeNow } from './lattice/search.ts';
 import type { SearchResult } from './result.ts';
@@ -22,10 +22,10 @@ const MEMORY = 2e9;
  * @throws LimitError, CancelledError, InputError as `search` in Node; InputError for a checkpoint, since a page has no folders
  */
 export async function search(h: Hamiltonian, options: BackgroundOptions): Promise<SearchResult> {
-  const { signal, memory, checkpoint, onProgress, ...rest } = options;
+  const { signal, memory = MEMORY, checkpoint, onProgress, ...rest } = options;
   if (checkpoint !== undefined) throw new InputError('search', 'no checkpoint in a browser', checkpoint);
   if (methodFor(h, options.range, options.method) !== 'growth')
-    refuse(estimate(h, options.range).bytes, memory);
+    requireMemory(`range ${options.range}`, estimate(h, options.range), memory);
   await turn(signal);
   return searchNow(h, { ...rest, onProgress: stoppable(onProgress, signal) });
 }
@@ -39,18 +39,10 @@ export async function searchLattice(
   model: LatticeModel,
   options: LatticeOptions & Pick<BackgroundOptions, 'signal' | 'memory'>,
 ): Promise<LatticeResult> {
-  const { signal, memory, onProgress, ...rest } = options;
-  refuse(estimateLattice(model, rest).bytes, memory);
+  const { signal, memory = MEMORY, onProgress, ...rest } = options;
+  requireMemory('the window', estimateLattice(model, rest), memory);
   await turn(signal);
   return searchLatticeNow(model, { ...rest, onProgress: stoppable(onProgress, signal) });
-}
-
-function refuse(bytes: number, memory = MEMORY): void {
-  const gigabytes = (value: number) => `${(value / 1e9).toPrecision(2)} GB`;
-  if (bytes > memory)
-    throw new LimitError(
-      `search: needs about ${gigabytes(bytes)}; ${gigabytes(memory)} may be used. Give a larger memory limit to try all the same`,
-    );
 }
 
 async function turn(signal: AbortSignal | undefined): Promise<void> {

@@ -7,7 +7,7 @@ import { CancelledError, InputError, LimitError, VerificationError } from '../er
 import { Box } from '../lattice/lattice.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
 import type { LatticeModel } from '../model/lattice-model.ts';
-import { estimate } from './estimate.ts';
+import { estimate, requireMemory } from './estimate.ts';
 import type { LatticeResult } from './lattice/result.ts';
 import { estimateLattice, type LatticeOptions, type LatticeProgress } from './lattice/search.ts';
 import type { SearchResult } from './result.ts';
@@ -33,12 +33,8 @@ export async function search(h: Hamiltonian, options: BackgroundOptions): Promis
   const { range, signal, onProgress, memory = freeMemory(), primesBelow, checkpoint } = options;
   const method = methodFor(h, range, options.method);
   // What growth needs follows the answer, which nobody knows beforehand; the exhaustive search says it to the byte.
-  const need = method === 'growth' ? undefined : estimate(h, range);
-  if (need !== undefined && need.bytes > memory)
-    throw new LimitError(
-      `search: range ${range} has ${need.candidates.toLocaleString('en')} candidates and needs about ${gigabytes(need.bytes)}; ` +
-        `${gigabytes(memory)} may be used. Give a larger memory limit to try all the same`,
-    );
+  // What growth needs follows the answer, which nobody knows beforehand; the exhaustive search says it to the byte.
+  if (method !== 'growth') requireMemory(`range ${range}`, estimate(h, range), memory);
   if (signal?.aborted) throw new CancelledError('search');
   const task: Task = {
     model: plainModel(h),
@@ -60,12 +56,7 @@ export async function searchLattice(
   options: LatticeOptions & Pick<BackgroundOptions, 'signal' | 'memory'>,
 ): Promise<LatticeResult> {
   const { signal, memory = freeMemory(), onProgress, ...plain } = options;
-  const need = estimateLattice(model, plain);
-  if (need.bytes > memory)
-    throw new LimitError(
-      `search: the window has ${need.candidates.toLocaleString('en')} candidates and needs about ${gigabytes(need.bytes)}; ` +
-        `${gigabytes(memory)} may be used. Give a larger memory limit to try all the same`,
-    );
+  requireMemory('the window', estimateLattice(model, plain), memory);
   if (signal?.aborted) throw new CancelledError('search');
   const { cell, extents } = model.lattice;
   const task: LatticeTask = { lattice: { ...model, lattice: { cell, extents } }, options: plain };
@@ -114,10 +105,6 @@ function errorOf({ name, message, input }: Extract<Answer<unknown, unknown>, { k
 function freeMemory(): number {
   const { availableMemory } = process as { availableMemory?: () => number };
   return availableMemory?.call(process) ?? freemem();
-}
-
-function gigabytes(bytes: number): string {
-  return `${(bytes / 1e9).toPrecision(2)} GB`;
 }
 
 /**

@@ -5,12 +5,12 @@
  * strings ordered by falling range, then alphabetically. So a charge's leading string has its full range and occurs in no
  * other charge of its part, and the entries are rationals that do not depend on any prime.
  */
-import { lcm } from '../algebra/rational.ts';
+import { gcd, lcm } from '../algebra/rational.ts';
 import { reducedBasis } from '../linear/elimination.ts';
 import type { Field } from '../linear/field.ts';
 import { kernel } from '../linear/kernel.ts';
 import { chineseRemainder, rationalReconstruction, reconstructionBound } from '../linear/reconstruct.ts';
-import type { SparseMatrix, SparseVector } from '../linear/sparse.ts';
+import { type Lines, type SparseMatrix, type SparseVector, transpose } from '../linear/sparse.ts';
 
 /** A charge as a column vector: integers without a common factor over the columns of a system, the leading one positive. */
 export interface IntegerVector {
@@ -80,7 +80,10 @@ export function liftCharges(
 ): Lifted {
   const primes = [first.field.p];
   const shape = shapeOf(first.basis);
-  const columns = byColumn(matrix);
+  const columns = transpose(
+    { start: matrix.start, index: matrix.column, value: matrix.value },
+    matrix.columns,
+  );
   let modulus = BigInt(first.field.p);
   let residues = flatten(first.basis).map((v) => v.values.map(BigInt));
   for (;;) {
@@ -159,41 +162,16 @@ function parityOf(basis: ModularBasis, index: number): IntegerVector['parity'] {
 function primitive(charge: IntegerVector): IntegerVector {
   let common = 0n;
   for (const value of charge.values) {
-    let [x, y] = [common, value < 0n ? -value : value];
-    while (y !== 0n) [x, y] = [y, x % y];
-    common = x;
+    common = gcd(common, value);
     if (common === 1n) return charge;
   }
   return { ...charge, values: charge.values.map((v) => v / common) };
 }
 
-/** The entries of a matrix by column, so that a product with a sparse vector costs what the vector meets. */
-interface ColumnView {
-  readonly start: Uint32Array;
-  readonly row: Uint32Array;
-  readonly value: Uint16Array;
-}
-
-function byColumn(matrix: SparseMatrix): ColumnView {
-  const start = new Uint32Array(matrix.columns + 1);
-  for (const column of matrix.column) start[column + 1]!++;
-  for (let c = 0; c < matrix.columns; c++) start[c + 1]! += start[c]!;
-  const next = start.slice();
-  const row = new Uint32Array(matrix.column.length);
-  const value = new Uint16Array(matrix.column.length);
-  for (let r = 0; r < matrix.rows; r++)
-    for (let i = matrix.start[r]!; i < matrix.start[r + 1]!; i++) {
-      const at = next[matrix.column[i]!]!++;
-      row[at] = r;
-      value[at] = matrix.value[i]!;
-    }
-  return { start, row, value };
-}
-
 /** Does every equation hold exactly? In integers, over the rows that meet the vector. */
 function isAnnihilated(
   matrix: SparseMatrix,
-  { start, row, value }: ColumnView,
+  { start, index: row, value }: Lines,
   charge: IntegerVector,
 ): boolean {
   const sums = new Map<number, bigint>();

@@ -12,6 +12,31 @@ export interface Estimate {
   readonly seconds: number;
 }
 
+/** Number of representatives of range 1 … `range`: 4^{nk} − 4^{n(k−1)}. */
+export function candidateCount(cell: number, range: number): number {
+  return 4 ** (cell * range) - 4 ** (cell * (range - 1));
+}
+
+/**
+ * Refuses a run that would not fit.
+ *
+ * @param what the run, as the subject of a sentence
+ * @param memory bytes that may be used
+ * @throws LimitError with the numbers and the way out
+ */
+export function requireMemory(
+  what: string,
+  need: { readonly candidates: number; readonly bytes: number },
+  memory: number,
+): void {
+  if (need.bytes <= memory) return;
+  const gigabytes = (bytes: number) => `${(bytes / 1e9).toPrecision(2)} GB`;
+  throw new LimitError(
+    `search: ${what} has ${need.candidates.toLocaleString('en')} candidates and needs about ${gigabytes(need.bytes)}; ` +
+      `${gigabytes(memory)} may be used. Give a larger memory limit to try all the same`,
+  );
+}
+
 /** Measured, docs/performance.md: runtime and code, and nanoseconds a candidate and term. */
 const BASE_BYTES = 90e6;
 const NANOSECONDS = 8;
@@ -32,7 +57,7 @@ export function estimate(h: Hamiltonian, range: number): Estimate {
       `search: range ${range} in cells of ${n} is ${n * range} spins, ${(size * (1 - 4 ** -n)).toPrecision(3)} candidates; the exhaustive search takes up to ${MAX_SPINS} spins`,
     );
   return {
-    candidates: size - 4 ** (n * (range - 1)),
+    candidates: candidateCount(n, range),
     bytes: Math.round(BASE_BYTES + 8 * size + hitBits / 8),
     seconds: (size * NANOSECONDS * (h.density.size + 2)) / 1e9,
   };

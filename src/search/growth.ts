@@ -16,6 +16,7 @@ import type { Field } from '../linear/field.ts';
 import type { SparseVector } from '../linear/sparse.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
 import { cellsOf } from './assemble.ts';
+import { candidateCount } from './estimate.ts';
 import type { OnProgress } from './sweep.ts';
 import { Neighbourhood, type WindowTable, windowTable } from './windows.ts';
 
@@ -220,7 +221,7 @@ class Growth {
       stage: 'sweep',
       layer: m,
       done: 1 - m / (this.range + 1),
-      candidates: 2 ** (this.table.cellBits * this.range),
+      candidates: candidateCount(this.table.cellBits / 2, this.range),
     });
   }
 

@@ -8,11 +8,12 @@ import { Operator } from '../algebra/operator.ts';
 import { type Rational, rational } from '../algebra/rational.ts';
 import type { Word } from '../algebra/word.ts';
 import { InputError, LimitError, show, VerificationError } from '../errors.ts';
-import { type Field, PRIME_BOUND, primeField, primesBelow } from '../linear/field.ts';
+import { PRIME_BOUND, primeFieldsBelow } from '../linear/field.ts';
 import type { SparseVector } from '../linear/sparse.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
 import { assemble, type RestrictedSystem } from './assemble.ts';
 import { type IntegerVector, liftCharges, type Mirror, type ModularBasis, modularBasis } from './charges.ts';
+import { candidateCount } from './estimate.ts';
 import { livingByGrowth } from './growth.ts';
 import { type Charge, type Method, resultFrom, type SearchResult } from './result.ts';
 import { aliveStrings, MAX_SPINS, type OnProgress, type SnapshotStore } from './sweep.ts';
@@ -51,7 +52,7 @@ export function searchNow(h: Hamiltonian, options: SearchOptions): SearchResult 
   const started = performance.now();
   const candidates = candidateCount(h.chain.cell, range);
   const solving = (done: number) => onProgress({ stage: 'solve', layer: 0, done, candidates });
-  const fields = fieldsBelow(bound);
+  const fields = primeFieldsBelow(bound);
   const method = methodFor(h, range, options.method);
   let refused = false;
   for (let attempt = 0; attempt < MAX_ATTEMPTS; attempt++) {
@@ -104,15 +105,6 @@ export function searchNow(h: Hamiltonian, options: SearchOptions): SearchResult 
 /** The method of a search when the caller leaves it open. */
 export function methodFor(h: Hamiltonian, range: number, method?: Method): Method {
   return method ?? (h.chain.cell * range > MAX_SPINS ? 'growth' : 'exhaustive');
-}
-
-/** Number of representatives of range 1 … `range`: 4^{nk} − 4^{n(k−1)}. */
-export function candidateCount(cell: number, range: number): number {
-  return 4 ** (cell * range) - 4 ** (cell * (range - 1));
-}
-
-function* fieldsBelow(bound: number): Generator<Field> {
-  for (const p of primesBelow(bound)) yield primeField(p);
 }
 
 /** The columns that charges use. Later primes need no others, and the exact check sees every equation that meets them. */

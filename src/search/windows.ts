@@ -6,6 +6,7 @@
  */
 import { phaseExponent } from '../algebra/word.ts';
 import { LimitError } from '../errors.ts';
+import { DistinctValues } from '../linear/sparse.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
 
 /** Widest window, in spins, whose table is written out: 4¹⁰ entries a term. */
@@ -35,21 +36,11 @@ export function windowTable(h: Hamiltonian): WindowTable {
       `search: an interaction over ${h.range} cells of ${h.chain.cell} spins covers ${spins} spins; the search takes up to ${MAX_WINDOW}`,
     );
   const size = 4 ** spins;
-  const values: bigint[] = [];
-  const indexOf = new Map<bigint, number>();
-  const intern = (value: bigint): number => {
-    let index = indexOf.get(value);
-    if (index === undefined) {
-      index = values.length;
-      indexOf.set(value, index);
-      values.push(value);
-    }
-    return index;
-  };
+  const distinct = new DistinctValues();
   const terms = [...h.density.numerators].map(([word, value]) => ({
     word: Number(word),
-    plus: intern(value),
-    minus: intern(-value),
+    plus: distinct.indexOf(value),
+    minus: distinct.indexOf(-value),
   }));
   const start = new Uint32Array(size + 1);
   for (let w = 0; w < size; w++) {
@@ -69,7 +60,7 @@ export function windowTable(h: Hamiltonian): WindowTable {
       forward[at] = phase === 1 ? t.minus : t.plus;
       backward[at++] = phase === 1 ? t.plus : t.minus;
     }
-  return { cellBits, bits: 2 * spins, start, image, forward, backward, values };
+  return { cellBits, bits: 2 * spins, start, image, forward, backward, values: distinct.values };
 }
 
 /**

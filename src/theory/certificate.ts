@@ -16,9 +16,9 @@ import {
   univariateOf,
 } from '../linear/univariate.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
+import { exactNullSpace, MatrixBuilder } from '../search/null-space.ts';
 import { decompose } from './decompose.ts';
 import { CellGrowth, injectivity } from './growth.ts';
-import { exactNullSpace, MatrixBuilder } from './null-space.ts';
 import { traceProduct } from './orthogonal.ts';
 import { boundsOf } from './pencil.ts';
 

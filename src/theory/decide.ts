@@ -3,8 +3,9 @@
  * from free fermions, short ranges from the exhaustive search.
  */
 import type { Hamiltonian } from '../model/hamiltonian.ts';
+import { candidateCount } from '../search/estimate.ts';
 import type { SearchResult } from '../search/result.ts';
-import { candidateCount, searchNow } from '../search/search.ts';
+import { searchNow } from '../search/search.ts';
 import { citationFor } from './citations.ts';
 import { type BondsAndFields, decompose, MAX_GROUPED_SPINS } from './decompose.ts';
 import { isFreeFermionic } from './free-fermions.ts';

@@ -6,8 +6,8 @@
 import { Operator } from '../algebra/operator.ts';
 import { phaseExponent, type Word } from '../algebra/word.ts';
 import type { IntegerVector } from '../search/charges.ts';
+import { exactNullSpace, MatrixBuilder } from '../search/null-space.ts';
 import type { BondsAndFields } from './decompose.ts';
-import { exactNullSpace, MatrixBuilder } from './null-space.ts';
 import { type Pencil, pencilFromRelations, ZERO_PENCIL } from './pencil.ts';
 
 /** Wave numbers 0 and π: Q = Σ ω^j τ_j(q) with ω = 1 or −1. */

@@ -5,10 +5,11 @@
  * A last letter on site b counts as position 2b where it commutes with a (in K), as 2b + 1 where it does not (in C); a first letter as
  * 2b or 2b − 1. The half-length ℓ is the difference, `G_ℓ` the densities of half-length exactly ℓ.
  */
+
+import { exactNullSpace, MatrixBuilder } from '../search/null-space.ts';
 import type { BondsAndFields } from './decompose.ts';
 import type { Sign } from './growth.ts';
 import { type Combination, type Letters, lettersOf } from './letters.ts';
-import { exactNullSpace, MatrixBuilder } from './null-space.ts';
 import { type Pencil, pencilFromRelations, ZERO_PENCIL } from './pencil.ts';
 
 /** A density: strings as numbers in base `letters.count`, first site lowest, first letter not the identity. */

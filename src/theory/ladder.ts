@@ -11,8 +11,8 @@ import { gcd } from '../algebra/rational.ts';
 import { HoldfastError, InputError, show, VerificationError } from '../errors.ts';
 import type { Chain } from '../lattice/chain.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
+import { exactNullSpace, MatrixBuilder } from '../search/null-space.ts';
 import { type Boost, type PackedDensity, pack, pass, passing, unpack } from './boost.ts';
-import { exactNullSpace, MatrixBuilder } from './null-space.ts';
 import { orthogonalBasis, projection } from './orthogonal.ts';
 
 /** No boost operator of this form; proves nothing about the charges of the model. */

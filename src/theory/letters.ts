@@ -8,8 +8,8 @@
 import { Operator } from '../algebra/operator.ts';
 import { gcd, lcm } from '../algebra/rational.ts';
 import type { Word } from '../algebra/word.ts';
+import { exactNullSpace, MatrixBuilder } from '../search/null-space.ts';
 import type { BondsAndFields } from './decompose.ts';
-import { exactNullSpace, MatrixBuilder } from './null-space.ts';
 import { orthogonalBasis, traceProduct } from './orthogonal.ts';
 
 /** Linear combinations of letters, by number. */

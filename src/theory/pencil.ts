@@ -8,7 +8,7 @@
 import { diagonalForm } from '../linear/diagonal.ts';
 import { integerRoots, univariateOf } from '../linear/univariate.ts';
 import type { IntegerVector } from '../search/charges.ts';
-import { exactNullSpace, MatrixBuilder } from './null-space.ts';
+import { exactNullSpace, MatrixBuilder } from '../search/null-space.ts';
 
 /** A pencil `a + t b`, reduced: dim N(t) = columns − rank. Rows are lists of integers. */
 export interface Pencil {

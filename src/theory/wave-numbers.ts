@@ -18,9 +18,9 @@ import {
   univariate,
   univariateOf,
 } from '../linear/univariate.ts';
+import { exactNullSpace, MatrixBuilder } from '../search/null-space.ts';
 import type { BondsAndFields } from './decompose.ts';
 import { CellGrowth, injectivity, type Sign } from './growth.ts';
-import { exactNullSpace, MatrixBuilder } from './null-space.ts';
 import { boundsOf, type PencilBounds } from './pencil.ts';
 
 export interface AtWaveNumber {

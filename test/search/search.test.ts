@@ -7,9 +7,9 @@ import { Chain } from '../../src/lattice/chain.ts';
 import { parseModel } from '../../src/model/formula.ts';
 import { hamiltonianOf } from '../../src/model/hamiltonian.ts';
 import { search } from '../../src/search/background.ts';
-import { estimate } from '../../src/search/estimate.ts';
+import { candidateCount, estimate } from '../../src/search/estimate.ts';
 import type { SearchResult } from '../../src/search/result.ts';
-import { candidateCount, leadingWord, searchNow } from '../../src/search/search.ts';
+import { leadingWord, searchNow } from '../../src/search/search.ts';
 import { property } from '../support/random.ts';
 import { textbookDimensions } from '../support/textbook.ts';
 

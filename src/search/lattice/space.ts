@@ -13,6 +13,7 @@
 import { phaseExponent } from '../../algebra/word.ts';
 import { InputError, LimitError, show } from '../../errors.ts';
 import { Box, type LatticeSite } from '../../lattice/lattice.ts';
+import { DistinctValues } from '../../linear/sparse.ts';
 import { type LatticeModel, reachOf, type Term } from '../../model/lattice-model.ts';
 
 /** The translations that define a class of charges. */
@@ -124,20 +125,10 @@ export class StringSpace {
     const inCandidates = (site: LatticeSite) =>
       site.cell.every((c, d) => !infinite[d] || (c >= 0 && c < steps[d]! - 1 + window[d]!));
     const placed = placedTerms(model, low, size, inCandidates);
-    const values: bigint[] = [];
-    const indexOf = new Map<bigint, number>();
-    const intern = (value: bigint): number => {
-      let index = indexOf.get(value);
-      if (index === undefined) {
-        index = values.length;
-        indexOf.set(value, index);
-        values.push(value);
-      }
-      return index;
-    };
-    this.#termPlus = Uint32Array.from(placed, (t) => intern(t.coefficient));
-    this.#termMinus = Uint32Array.from(placed, (t) => intern(-t.coefficient));
-    this.values = values;
+    const distinct = new DistinctValues();
+    this.#termPlus = Uint32Array.from(placed, (t) => distinct.indexOf(t.coefficient));
+    this.#termMinus = Uint32Array.from(placed, (t) => distinct.indexOf(-t.coefficient));
+    this.values = distinct.values;
     this.#termStart = new Uint32Array(placed.length + 1);
     placed.forEach((t, i) => {
       this.#termStart[i + 1] = this.#termStart[i]! + t.sites.length;

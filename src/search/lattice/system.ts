@@ -1,7 +1,7 @@
 /** The equations of a lattice search on the candidates that are left, as a sparse matrix with columns in canonical order. */
 import { compareWords, type Word } from '../../algebra/word.ts';
 import { LimitError } from '../../errors.ts';
-import type { SparseMatrix } from '../../linear/sparse.ts';
+import { type SparseMatrix, transpose } from '../../linear/sparse.ts';
 import { KeyIndex, type StringSpace } from './space.ts';
 
 /** An entry of the system: `value · ω^exponent`, ω the root of unity of the translations. */
@@ -95,19 +95,7 @@ export function latticeSystem(
     }
     columnStart[column + 1] = size;
   }
-  // Columns to rows: a counting sort keeps the columns of a row in order.
-  const start = new Uint32Array(rowOf.size + 1);
-  for (let i = 0; i < size; i++) start[rows[i]! + 1]!++;
-  for (let row = 0; row < rowOf.size; row++) start[row + 1]! += start[row]!;
-  const next = start.slice();
-  const column = new Uint32Array(size);
-  const value = new Uint16Array(size);
-  for (let c = 0; c < order.length; c++)
-    for (let i = columnStart[c]!; i < columnStart[c + 1]!; i++) {
-      const at = next[rows[i]!]!++;
-      column[at] = c;
-      value[at] = values[i]!;
-    }
+  const byRow = transpose({ start: columnStart, index: rows, value: values }, rowOf.size);
   return {
     entries,
     keys: sorted,
@@ -115,9 +103,9 @@ export function latticeSystem(
     matrix: {
       columns: order.length,
       rows: rowOf.size,
-      start,
-      column,
-      value,
+      start: byRow.start,
+      column: byRow.index,
+      value: byRow.value,
       values: entries.map((e) => e.value),
     },
   };

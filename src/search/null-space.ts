@@ -2,33 +2,27 @@
  * Null spaces over the rationals, by two bounds that meet: the rank modulo one prime from below, as many exact vectors from above.
  */
 import { LimitError, VerificationError } from '../errors.ts';
-import { primeField, primesBelow } from '../linear/field.ts';
-import type { SparseMatrix } from '../linear/sparse.ts';
-import { type IntegerVector, liftCharges, modularBasis } from '../search/charges.ts';
+import { primeFieldsBelow } from '../linear/field.ts';
+import { DistinctValues, type SparseMatrix } from '../linear/sparse.ts';
+import { type IntegerVector, liftCharges, modularBasis } from './charges.ts';
 
 /** Collects the entries of a matrix column by column; rows are named by any key. Entries in the same place add up. */
-export class MatrixBuilder {
-  readonly #rows = new Map<number, number>();
+export class MatrixBuilder<K = number> {
+  readonly #rows = new Map<K, number>();
   readonly #row: number[] = [];
   readonly #column: number[] = [];
   readonly #value: number[] = [];
-  readonly #values: bigint[] = [];
-  readonly #index = new Map<bigint, number>();
+  readonly #values = new DistinctValues();
 
-  add(row: number, column: number, value: bigint): void {
+  add(row: K, column: number, value: bigint): void {
     if (value === 0n) return;
     let r = this.#rows.get(row);
     if (r === undefined) {
       r = this.#rows.size;
       this.#rows.set(row, r);
     }
-    let v = this.#index.get(value);
-    if (v === undefined) {
-      v = this.#values.length;
-      if (v === MAX_VALUES) throw new LimitError(`null space: more than ${MAX_VALUES} different entries`);
-      this.#values.push(value);
-      this.#index.set(value, v);
-    }
+    const v = this.#values.indexOf(value);
+    if (v === MAX_VALUES) throw new LimitError(`null space: more than ${MAX_VALUES} different entries`);
     this.#row.push(r);
     this.#column.push(column);
     this.#value.push(v);
@@ -48,7 +42,7 @@ export class MatrixBuilder {
       column[at] = this.#column[i]!;
       value[at] = this.#value[i]!;
     });
-    return { columns, rows, start, column, value, values: this.#values };
+    return { columns, rows, start, column, value, values: this.#values.values };
   }
 }
 
@@ -60,9 +54,7 @@ const MAX_ATTEMPTS = 12;
  * and there are no more, since the rank modulo a prime is at most the rank.
  */
 export function exactNullSpace(matrix: SparseMatrix): IntegerVector[] {
-  const fields = (function* () {
-    for (const p of primesBelow()) yield primeField(p);
-  })();
+  const fields = primeFieldsBelow();
   for (let attempt = 0; attempt < MAX_ATTEMPTS; attempt++) {
     const field = fields.next().value!;
     const basis = modularBasis(matrix, null, field);
