@@ -8,6 +8,7 @@ import { algebra } from './commands/algebra.ts';
 import { bound } from './commands/bound.ts';
 import { check } from './commands/check.ts';
 import { cite } from './commands/cite.ts';
+import { collect } from './commands/collect.ts';
 import { completionCommand } from './commands/completion.ts';
 import { currents } from './commands/currents.ts';
 import { decide } from './commands/decide.ts';
@@ -17,6 +18,7 @@ import { fermions } from './commands/fermions.ts';
 import { ladder } from './commands/ladder.ts';
 import { matrix } from './commands/matrix.ts';
 import { residual } from './commands/residual.ts';
+import { scan } from './commands/scan.ts';
 import { search } from './commands/search.ts';
 
 const COMMANDS: readonly Command[] = [
@@ -32,6 +34,8 @@ const COMMANDS: readonly Command[] = [
   check,
   cite,
   matrix,
+  scan,
+  collect,
   completionCommand(() => COMMANDS),
   demo,
 ];

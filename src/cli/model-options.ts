@@ -81,7 +81,7 @@ export function settings({ values }: ModelInput): Map<string, Exact> {
 }
 
 /** A file, or standard input for `-`, as text; stops at the limit of a model instead of filling memory. */
-export async function readText(path: string): Promise<string> {
+export async function readText(path: string, option = '--model'): Promise<string> {
   const who = path === '-' ? 'standard input' : path;
   const chunks: Buffer[] = [];
   let length = 0;
@@ -95,7 +95,7 @@ export async function readText(path: string): Promise<string> {
     for await (const chunk of stream) take(chunk as Buffer);
   } catch (error) {
     if (error instanceof InputError) throw error;
-    throw new InputError('--model', 'a readable file', `${show(path)}: ${(error as Error).message}`);
+    throw new InputError(option, 'a readable file', `${show(path)}: ${(error as Error).message}`);
   }
   try {
     return new TextDecoder('utf-8', { fatal: true }).decode(Buffer.concat(chunks));

@@ -1,4 +1,5 @@
 /** Files that a command writes: whole or not at all, however long they are. */
+import { randomBytes } from 'node:crypto';
 import { open, rename, rm } from 'node:fs/promises';
 import { CancelledError, HoldfastError, show } from '../errors.ts';
 
@@ -19,7 +20,7 @@ export async function writeFileWhole(
   parts: Iterable<string>,
   signal: AbortSignal,
 ): Promise<void> {
-  const scratch = `${file}.${process.pid}.part`;
+  const scratch = `${file}.${randomBytes(4).toString('hex')}.part`;
   try {
     const handle = await open(scratch, 'wx');
     try {

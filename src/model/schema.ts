@@ -163,13 +163,13 @@ export function jsonFromModel(
   };
 }
 
-export function parseJson(text: string): unknown {
+export function parseJson(text: string, who = 'model'): unknown {
   if (text.length > MAX_MODEL_LENGTH)
-    throw new InputError('model', `at most ${MAX_MODEL_LENGTH} characters`, `${text.length}`);
+    throw new InputError(who, `at most ${MAX_MODEL_LENGTH} characters`, `${text.length}`);
   try {
     return JSON.parse(text);
   } catch (error) {
-    throw new InputError('model', 'JSON', (error as Error).message);
+    throw new InputError(who, 'JSON', (error as Error).message);
   }
 }
 

@@ -8,6 +8,7 @@ import type { FamilyResult } from '../theory/family/classify.ts';
 import { answersOf, type Locus } from '../theory/family/loci.ts';
 import { conditionText } from './family.ts';
 import { escapeMarkup } from './markup.ts';
+import { PALETTE } from './palette.ts';
 
 export interface PlotWindow {
   readonly left: number;
@@ -20,8 +21,7 @@ const SIDE = 420;
 const MARGIN = { left: 64, top: 24, bottom: 56 };
 /** Squares a side in which a curve is looked for. */
 const GRID = 240;
-/** Told apart without colour too: every curve has its own dashes. Colours: Okabe and Ito's palette, common practice. */
-const STROKES = ['#0072b2', '#d55e00', '#009e73', '#cc79a7', '#e69f00', '#56b4e9', '#000000'] as const;
+/** Told apart without colour too: every curve has its own dashes. */
 const DASHES = ['none', '7 3', '2 3', '9 3 2 3', '12 4', '4 2', '1 2'] as const;
 
 /** @param result a family with two parameters: the first runs to the right, the second up */
@@ -40,7 +40,7 @@ export function plotFamily(result: FamilyResult, view: PlotWindow): string {
   let points = 0;
   for (const answer of answers)
     for (const locus of answer.loci.flatMap((l) => [l, ...l.equivalent])) {
-      const stroke = STROKES[style % STROKES.length]!;
+      const stroke = PALETTE[style % PALETTE.length]!;
       const dash = DASHES[style % DASHES.length]!;
       const label = `${answer.dimensionByRange.join(', ')}   ${conditionText(locus, names)}`;
       if (locus.equations.length === 1) {
@@ -105,7 +105,8 @@ function square(fill: string, stroke: string): string {
   return `<rect x="6" y="-11" width="14" height="12" fill="${fill}" stroke="${stroke}"/>`;
 }
 
-function ticks(low: number, high: number): number[] {
+/** Round numbers from low to high, about six. */
+export function ticks(low: number, high: number): number[] {
   const rough = (high - low) / 6;
   const unit = 10 ** Math.floor(Math.log10(rough));
   const step = [1, 2, 5, 10].map((m) => m * unit).find((s) => s >= rough)!;

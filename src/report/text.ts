@@ -107,7 +107,7 @@ function densityLines({ chain }: Hamiltonian, density: GroupedDensity, width: nu
 }
 
 /** Greedy lines of a sentence. */
-function wrap(sentence: string, width: number): string[] {
+export function wrap(sentence: string, width: number): string[] {
   const lines: string[] = [];
   for (const word of sentence.split(' ')) {
     const last = lines.at(-1);

@@ -1,7 +1,4 @@
 /** The search in a thread of its own: the event loop of the host stays free, and an `AbortSignal` stops it at once. */
-import { createRequire } from 'node:module';
-import { freemem } from 'node:os';
-import { pathToFileURL } from 'node:url';
 import { Worker } from 'node:worker_threads';
 import { CancelledError, InputError, LimitError, VerificationError } from '../errors.ts';
 import { Box } from '../lattice/lattice.ts';
@@ -13,6 +10,7 @@ import { estimateLattice, type LatticeOptions, type LatticeProgress } from './la
 import type { SearchResult } from './result.ts';
 import { methodFor, type SearchOptions } from './search.ts';
 import type { Progress } from './sweep.ts';
+import { freeMemory, threadSource } from './thread.ts';
 import { type PlainResult, plainModel, resultOf } from './transfer.ts';
 import type { Answer, LatticeTask, Task } from './worker.ts';
 
@@ -32,7 +30,6 @@ export interface BackgroundOptions extends Omit<SearchOptions, 'store'> {
 export async function search(h: Hamiltonian, options: BackgroundOptions): Promise<SearchResult> {
   const { range, signal, onProgress, memory = freeMemory(), primesBelow, checkpoint } = options;
   const method = methodFor(h, range, options.method);
-  // What growth needs follows the answer, which nobody knows beforehand; the exhaustive search says it to the byte.
   // What growth needs follows the answer, which nobody knows beforehand; the exhaustive search says it to the byte.
   if (method !== 'growth') requireMemory(`range ${range}`, estimate(h, range), memory);
   if (signal?.aborted) throw new CancelledError('search');
@@ -71,7 +68,7 @@ async function inThread<P, R>(
   onProgress: ((progress: P) => void) | undefined,
   signal: AbortSignal | undefined,
 ): Promise<R> {
-  const worker = new Worker(...workerSource(task));
+  const worker = new Worker(...threadSource(new URL('./worker.js', import.meta.url), import.meta.url, task));
   try {
     return await new Promise<R>((resolve, reject) => {
       signal?.addEventListener('abort', () => reject(new CancelledError('search')), { once: true });
@@ -100,24 +97,4 @@ function errorOf({ name, message, input }: Extract<Answer<unknown, unknown>, { k
   if (input !== undefined) return new InputError(input.who, input.expected, input.got);
   if (name === 'LimitError' || name === 'RangeError') return new LimitError(message);
   return new VerificationError(message);
-}
-
-function freeMemory(): number {
-  const { availableMemory } = process as { availableMemory?: () => number };
-  return availableMemory?.call(process) ?? freemem();
-}
-
-/**
- * The worker's file beside this one. From source its thread needs a TypeScript loader of its own, whatever the host uses: the
- * loader of the development set-up is registered there first.
- */
-function workerSource(task: Task | LatticeTask): ConstructorParameters<typeof Worker> {
-  if (!import.meta.url.endsWith('.ts'))
-    return [new URL('./worker.js', import.meta.url), { workerData: task }];
-  const loader = createRequire(import.meta.url)
-    .resolve('tsx/esm/api')
-    .replace(/\.cjs$/, '.mjs');
-  const file = new URL('./worker.ts', import.meta.url).href;
-  const script = `import(${JSON.stringify(pathToFileURL(loader).href)}).then(({ tsImport }) => tsImport(${JSON.stringify(file)}, ${JSON.stringify(file)}));`;
-  return [script, { eval: true, workerData: task, execArgv: [] }];
 }

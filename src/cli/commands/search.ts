@@ -192,7 +192,7 @@ export function rangeOption({ values }: Pick<CommandInput, 'values'>): number {
   return Number(text);
 }
 
-function gigabytesOption({ values }: Pick<CommandInput, 'values'>): number | undefined {
+export function gigabytesOption({ values }: Pick<CommandInput, 'values'>): number | undefined {
   const text = values['memory'];
   if (text === undefined) return undefined;
   if (typeof text !== 'string' || !/^\d{1,6}(\.\d+)?$/.test(text) || Number(text) === 0)

@@ -1,0 +1,223 @@
+/** What is done at one point of a plan, and what is kept of it: a plain value, the same bytes whoever computes it. */
+import { textFromRational } from '../algebra/rational.ts';
+import { assertCertifiable, certificateNow } from '../certificate/certificate.ts';
+import { terms } from '../certificate/document.ts';
+import { HoldfastError, InputError, LimitError } from '../errors.ts';
+import { parseDensity } from '../model/formula.ts';
+import type { Hamiltonian } from '../model/hamiltonian.ts';
+import { modelFromDocument } from '../model/schema.ts';
+import { parseSyntax } from '../model/syntax.ts';
+import { innerProduct } from '../physics/inner-product.ts';
+import { nearestCharge, residual, smallestCorrection } from '../physics/residual.ts';
+import { estimate } from '../search/estimate.ts';
+import type { SearchResult } from '../search/result.ts';
+import { methodFor, searchNow } from '../search/search.ts';
+import { everyRangeCertificate } from '../theory/certificate.ts';
+import { decide } from '../theory/decide.ts';
+import { type PointsPlan, sha256, type Task } from './plan.ts';
+import type { Points } from './points.ts';
+import type { Answer, CertificateNote, Outcome } from './record.ts';
+
+/** An outcome, and the text of the certificate that it names. */
+export interface PointResult {
+  readonly outcome: Outcome;
+  readonly certificate: string | null;
+}
+
+/** The Hamiltonian at a point. @throws InputError where it is zero, or a value divides by zero */
+export function hamiltonianAt(
+  { model, parameters, task }: PointsPlan,
+  values: readonly string[],
+): Hamiltonian {
+  const used = task.kind === 'residual' ? parseSyntax(model.formula).names : null;
+  const free = parameters.map(({ name }, i) => [name, values[i]!] as const);
+  const all = [...Object.entries(model.parameters), ...free].filter(
+    ([name]) => used === null || used.has(name),
+  );
+  return modelFromDocument({ formula: model.formula, cell: model.cell }, new Map(all));
+}
+
+/**
+ * Does the task of a plan at a point. A fault of the point itself (a zero Hamiltonian) is an answer like others; what may go better
+ * another time (memory) is marked as failed.
+ */
+export async function runPoint(plan: PointsPlan, values: readonly string[]): Promise<PointResult> {
+  try {
+    const { answer, certificate } = answerAt(plan, values);
+    if (certificate === null) return { outcome: { status: 'done', answer }, certificate: null };
+    if ('none' in certificate) return { outcome: { status: 'done', answer, certificate }, certificate: null };
+    const { text } = certificate;
+    const note: CertificateNote = { id: await sha256(text) };
+    return { outcome: { status: 'done', answer, certificate: note }, certificate: text };
+  } catch (error) {
+    if (error instanceof InputError)
+      return { outcome: { status: 'refused', reason: error.message }, certificate: null };
+    // An allocation that the machine refuses arrives as a RangeError.
+    if (error instanceof HoldfastError || error instanceof RangeError)
+      return { outcome: { status: 'failed', reason: error.message }, certificate: null };
+    throw error;
+  }
+}
+
+interface Answered {
+  readonly answer: Answer;
+  readonly certificate: { readonly text: string } | { readonly none: string } | null;
+}
+
+function answerAt(plan: PointsPlan, values: readonly string[]): Answered {
+  const h = hamiltonianAt(plan, values);
+  const { task } = plan;
+  switch (task.kind) {
+    case 'search': {
+      const result = searchNow(h, { range: task.range });
+      return {
+        answer: searchAnswer(result, task.charges),
+        certificate: task.certificates ? certified(() => certificateNow(result)) : null,
+      };
+    }
+    case 'decide':
+      return {
+        answer: decideAnswer(h, task),
+        certificate: task.certificates ? certified(() => everyRangeCertificate(h)) : null,
+      };
+    case 'residual':
+      return { answer: residualAnswer(h, plan, task, values), certificate: null };
+  }
+}
+
+/** A certificate that would be too large, or a model for which there is none, leaves the answer as it is. */
+function certified(write: () => string): { text: string } | { none: string } {
+  try {
+    return { text: write() };
+  } catch (error) {
+    if (error instanceof LimitError) return { none: error.message };
+    throw error;
+  }
+}
+
+function searchAnswer(result: SearchResult, withCharges: boolean): Answer {
+  const { hamiltonian, dimensionByRange, minimumCells, charges } = result;
+  return {
+    kind: 'search',
+    dimensionByRange: [...dimensionByRange],
+    minimumCells,
+    ...(withCharges
+      ? {
+          charges: charges.map(({ range, parity, density }) => ({
+            range,
+            parity,
+            terms: terms(hamiltonian.chain, density) as [string, string][],
+          })),
+        }
+      : {}),
+  };
+}
+
+function decideAnswer(h: Hamiltonian, { range, waveNumbers }: Extract<Task, { kind: 'decide' }>): Answer {
+  const verdict = decide(h, { waveNumbers, ...(range === null ? {} : { searchRange: range }) });
+  const bound = 'bound' in verdict ? verdict.bound : null;
+  return {
+    kind: 'decide',
+    verdict: verdict.kind,
+    from: 'from' in verdict ? verdict.from : null,
+    perRange: verdict.kind === 'complete' ? verdict.perRange : verdict.kind === 'none' ? 0 : null,
+    bound: bound && {
+      group: bound.group,
+      from: bound.from,
+      generic: bound.generic,
+      exceptional: bound.exceptional.map(({ range: at, atMost }) => [at, atMost] as [number, number]),
+    },
+    theorem: verdict.kind === 'by citation' ? verdict.citation.theorem.id : null,
+    reason: 'reason' in verdict ? verdict.reason : null,
+    dimensionByRange: [...verdict.search.dimensionByRange],
+    waveNumbers:
+      verdict.waveNumbers === null
+        ? null
+        : verdict.waveNumbers.kind === 'open'
+          ? `open: ${verdict.waveNumbers.reason}`
+          : verdict.waveNumbers.noneOfRange3
+            ? 'covered: none of range 3 or more'
+            : 'covered',
+  };
+}
+
+function residualAnswer(
+  h: Hamiltonian,
+  { model, parameters }: PointsPlan,
+  { candidate, range }: Extract<Task, { kind: 'residual' }>,
+  values: readonly string[],
+): Answer {
+  const { names } = parseSyntax(candidate);
+  const all = [
+    ...Object.entries(model.parameters),
+    ...parameters.map(({ name }, i) => [name, values[i]!] as const),
+  ].filter(([name]) => names.has(name));
+  const density = parseDensity(candidate, { cell: model.cell, parameters: new Map(all) });
+  const { conserved, commutator } = residual(h, density);
+  const squaredNorm = textFromRational(innerProduct(h.chain, commutator, commutator));
+  if (range === null) return { kind: 'residual', conserved, squaredNorm };
+  const correction = conserved ? null : smallestCorrection(h, density, { range });
+  const { distance } = nearestCharge(searchNow(h, { range }), density);
+  return {
+    kind: 'residual',
+    conserved,
+    squaredNorm,
+    correctionRange: conserved ? 0 : (correction?.range ?? null),
+    squaredDistance: textFromRational(distance),
+  };
+}
+
+/** What the points of a plan need, from some of them. */
+export interface PlanEstimate {
+  /** Bytes at the peak, the largest of the points looked at; a certificate and dear models may take a few times more. */
+  readonly bytes: number;
+  /** Seconds a point, their mean: a rough guess. */
+  readonly seconds: number;
+}
+
+/** Points that are looked at: spread over all of them, first and last included. */
+const LOOKED_AT = 64;
+
+/** Without a range `decide` searches a few thousand candidates, and evaluates the lemmas: well under a second for one spin a cell. */
+const DECIDE_SECONDS = 0.2;
+const BASE_BYTES = 150e6;
+
+/**
+ * Memory and time of a plan.
+ *
+ * @throws LimitError where a range does not fit any machine, or cannot be certified; InputError when no point has a Hamiltonian
+ */
+export function estimatePlan(plan: PointsPlan, points: Points): PlanEstimate {
+  const { task } = plan;
+  let bytes = 0;
+  let seconds = 0;
+  let looked = 0;
+  let refusal: InputError | undefined;
+  const looks = Math.min(LOOKED_AT, points.count);
+  for (let i = 0; i < looks; i++) {
+    const point = looks === 1 ? 0 : Math.floor((i * (points.count - 1)) / (looks - 1));
+    let h: Hamiltonian;
+    try {
+      h = hamiltonianAt(plan, points.at(point));
+    } catch (error) {
+      if (!(error instanceof InputError)) throw error;
+      refusal = error;
+      continue;
+    }
+    if (task.kind === 'search' && task.certificates) assertCertifiable(h, task.range);
+    const need = task.range === null ? { bytes: BASE_BYTES, seconds: 0 } : needOf(h, task.range);
+    const certificates = task.kind === 'search' && task.certificates ? 2 : 1;
+    bytes = Math.max(bytes, need.bytes);
+    seconds += certificates * need.seconds + (task.kind === 'decide' ? DECIDE_SECONDS : 0.02);
+    looked++;
+  }
+  if (looked === 0) throw refusal ?? new InputError('plan', 'a point', 'none');
+  return { bytes: Math.max(bytes, BASE_BYTES), seconds: seconds / looked };
+}
+
+/** What growth needs follows the answer, which nobody knows beforehand: a guess. */
+const GROWTH = { bytes: 500e6, seconds: 10 };
+
+function needOf(h: Hamiltonian, range: number): { readonly bytes: number; readonly seconds: number } {
+  return methodFor(h, range) === 'growth' ? GROWTH : estimate(h, range);
+}
