@@ -146,9 +146,41 @@ export { mathmlEquation } from './report/mathml.ts';
 export { type PageOptions, reportPage } from './report/page.ts';
 export { growthPicture, legendPicture, pictureOfCharge, pictureOfResult } from './report/picture.ts';
 export { DISPLAY, type Display, displayOf, rich } from './report/rich.ts';
+export { scanMap } from './report/scan-map.ts';
+export { type ScanResults, scanCsv, scanJson } from './report/scan-table.ts';
 export { type Story, type StoryLayer, type StoryStep, storyOf, tellLayer, tellStep } from './report/story.ts';
 export { printCharge, printDensity, printResult, type TextOptions } from './report/text.ts';
 export { CAUTIONS, verdictOf } from './report/verdict.ts';
+export { type Collected, mergeRecords } from './scan/merge.ts';
+export {
+  type PointsPlan,
+  planHash,
+  planJsonSchema,
+  type ReadPlan,
+  readPlan,
+  type ScanAxis,
+  type ScanTask,
+} from './scan/plan.ts';
+export { type Points, pointsIn } from './scan/points.ts';
+export {
+  type CertificateNote,
+  headerLine,
+  type Outcome,
+  type PointAnswer,
+  type PointRecord,
+  type RecordFile,
+  readRecords,
+  recordLine,
+} from './scan/record.ts';
+export { estimatePlan, hamiltonianAt, type PlanEstimate, type PointResult, runPoint } from './scan/run.ts';
+export {
+  pointsOfShard,
+  type Shard,
+  shardFromText,
+  shardOf,
+  textFromShard,
+  WHOLE_PLAN,
+} from './scan/shard.ts';
 export { type BackgroundOptions, searchLattice } from './search/background.ts';
 export { candidateCount, type Estimate, estimate } from './search/estimate.ts';
 export { type AllWaves, allWaves, type ExceptionalWaves } from './search/lattice/all-waves.ts';

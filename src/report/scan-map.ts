@@ -129,7 +129,7 @@ function patternOf({ colour, pattern }: Mark, i: number): string {
 
 /** A letter that can be read on any pattern. */
 function boxed(letter: string, x: number, y: number): string {
-  return `<text x="${x}" y="${y}" text-anchor="middle" font-size="11" font-weight="bold" stroke="#fff" stroke-width="3" paint-order="stroke">${escapeMarkup(letter)}</text>`;
+  return `<text x="${x}" y="${y}" text-anchor="middle" font-size="11" font-weight="bold" stroke="#fff" stroke-width="2.4" paint-order="stroke">${escapeMarkup(letter)}</text>`;
 }
 
 interface Drawn {
@@ -157,7 +157,7 @@ function gridBody(
       while (!single && end < across.length && markOf(end * up.length + j) === mark) end++;
       const x = LEFT + i * side;
       const y = TOP + height - (j + 1) * side;
-      const rect = `<rect x="${x.toFixed(2)}" y="${y.toFixed(2)}" width="${((end - i) * side).toFixed(2)}" height="${side.toFixed(2)}" fill="url(#m${mark})"${side >= 6 ? ' stroke="#fff" stroke-width="0.7"' : ''}`;
+      const rect = `<rect x="${x.toFixed(2)}" y="${y.toFixed(2)}" width="${((end - i) * side).toFixed(2)}" height="${side.toFixed(2)}" fill="url(#m${mark})"${single && side >= 6 ? ' stroke="#fff" stroke-width="0.7"' : ''}`;
       if (!single) parts.push(`${rect}/>`);
       else {
         const point = i * up.length + j;
@@ -209,7 +209,7 @@ function dotBody(
   const [width, height] = [SIDE, flat ? 60 : SIDE];
   const px = (value: number) => LEFT + ((value - x.low) / (x.high - x.low)) * width;
   const py = (value: number) => TOP + ((y.high - value) / (y.high - y.low)) * height;
-  const radius = points.count <= 400 ? 7 : points.count <= 2_000 ? 4 : 2;
+  const radius = points.count <= 400 ? 9 : points.count <= 2_000 ? 4 : 2;
   const parts = [
     `<rect x="${LEFT}" y="${TOP}" width="${width}" height="${height}" fill="none" stroke="#333"/>`,
     ...ticks(x.low, x.high).map((t) => below(px(t), TOP + height, String(t))),
@@ -223,7 +223,7 @@ function dotBody(
     parts.push(
       `<circle cx="${cx.toFixed(1)}" cy="${cy.toFixed(1)}" r="${radius}" fill="url(#m${mark})" stroke="#333" stroke-width="0.6">${title}</circle>`,
     );
-    if (radius === 7) parts.push(boxed(marks[mark]!.letter, cx, cy + 4));
+    if (radius === 9) parts.push(boxed(marks[mark]!.letter, cx, cy + 4));
   });
   parts.push(...axisNames(names, width, height));
   return { body: parts.join('\n'), width, height };

@@ -1,8 +1,8 @@
 /** The results of a scan: one line a point as CSV or JSON, and a summary. The same bytes whatever the shards were. */
 import { rationalFromText } from '../algebra/rational.ts';
 import type { Collected } from '../scan/merge.ts';
-import type { PointsPlan, Task } from '../scan/plan.ts';
-import type { Answer, Outcome } from '../scan/record.ts';
+import type { PointsPlan, ScanTask } from '../scan/plan.ts';
+import type { Outcome, PointAnswer } from '../scan/record.ts';
 import { EVERY_RANGE_CAUTIONS } from '../theory/verdict.ts';
 import { decimalText } from './decimal.ts';
 import { CAUTIONS } from './verdict.ts';
@@ -20,7 +20,7 @@ export interface ScanResults {
 /** Decimals of the columns beside the exact values; for plots only. */
 const DECIMALS = 12;
 
-const COLUMNS: Readonly<Record<Task['kind'], readonly string[]>> = {
+const COLUMNS: Readonly<Record<ScanTask['kind'], readonly string[]>> = {
   search: ['charges', 'minimum ring'],
   decide: ['verdict', 'from', 'per range', 'at most', 'exceptional', 'theorem', 'wave numbers', 'searched'],
   residual: ['conserved', 'squared norm', 'correction range', 'squared distance'],
@@ -132,7 +132,7 @@ export function labelOf(outcome: Outcome | undefined): string {
 }
 
 /** What the numbers of a label mean, for a legend. */
-export function labelTitle(task: Task): string {
+export function labelTitle(task: ScanTask): string {
   switch (task.kind) {
     case 'search':
       return `New charges of range exactly 1 … ${task.range}`;
@@ -144,7 +144,7 @@ export function labelTitle(task: Task): string {
 }
 
 /** The answer assumes so much, and does not show so much. */
-export function cautionsOf(task: Task): readonly string[] {
+export function cautionsOf(task: ScanTask): readonly string[] {
   switch (task.kind) {
     case 'search':
       return [`Complete up to range ${task.range}; says nothing about longer ones.`, ...CAUTIONS];
@@ -155,7 +155,7 @@ export function cautionsOf(task: Task): readonly string[] {
   }
 }
 
-function cellsOf(answer: Answer): string[] {
+function cellsOf(answer: PointAnswer): string[] {
   const text = (value: number | string | null | undefined) =>
     value === null || value === undefined ? '' : String(value);
   switch (answer.kind) {

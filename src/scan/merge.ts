@@ -22,7 +22,7 @@ export function isFinal(outcome: Outcome): boolean {
 }
 
 /** Merges records. Times do not count: the same outcome twice is the same result. */
-export function merge(points: Points, records: Iterable<PointRecord>): Collected {
+export function mergeRecords(points: Points, records: Iterable<PointRecord>): Collected {
   const outcomes = new Map<number, Outcome>();
   const conflicts = new Set<number>();
   let strays = 0;

@@ -35,19 +35,18 @@ const MAX_RANGE = 9_999;
 const name = z.string().max(MAX_NAME_LENGTH).regex(PARAMETER_NAME, 'expected the name of a parameter');
 const range = z.int().min(1).max(MAX_RANGE);
 
-const axis = z.union([
-  z.strictObject({ name, values: z.array(number).min(1).max(MAX_VALUES) }),
-  z.strictObject({
-    name,
-    from: number,
-    to: number,
-    steps: z
-      .int()
-      .min(1)
-      .max(MAX_VALUES - 1),
-  }),
-  z.strictObject({ name }),
-]);
+// Which fields go together is said below: a union would name a fault of the branch that was not meant.
+const axis = z.strictObject({
+  name,
+  values: z.array(number).min(1).max(MAX_VALUES).optional(),
+  from: number.optional(),
+  to: number.optional(),
+  steps: z
+    .int()
+    .min(1)
+    .max(MAX_VALUES - 1)
+    .optional(),
+});
 
 const task = z.discriminatedUnion('kind', [
   z.strictObject({
@@ -79,22 +78,30 @@ const pointsPlan = z.strictObject({
   points: z.union(
     [
       z.literal('grid'),
-      z.strictObject({ list: z.array(z.array(number)).min(1).max(MAX_POINTS) }),
-      z.strictObject({ sample: z.int().min(1).max(MAX_POINTS), seed: z.int().min(0) }),
+      z.strictObject({
+        list: z.array(z.array(number)).min(1).max(MAX_POINTS).optional(),
+        sample: z.int().min(1).max(MAX_POINTS).optional(),
+        seed: z.int().min(0).optional(),
+      }),
     ],
-    { error: 'expected "grid", {"list": …} or {"sample": …, "seed": …}' },
+    {
+      error: ({ input }) =>
+        typeof input === 'object' && input !== null
+          ? undefined
+          : 'expected "grid", {"list": …} or {"sample": …, "seed": …}',
+    },
   ),
   task,
   confirm: z.int().min(1).max(MAX_POINTS).optional(),
 });
 
 /** One parameter: its values on a grid, equally spaced ones with both ends, or a name alone where the points are listed. */
-export type Axis =
+export type ScanAxis =
   | { readonly name: string; readonly values: readonly string[] }
   | { readonly name: string; readonly from: string; readonly to: string; readonly steps: number }
   | { readonly name: string };
 
-export type Task = z.infer<typeof task>;
+export type ScanTask = z.infer<typeof task>;
 
 /** A validated plan: numbers as exact text in lowest terms, defaults filled in, every field that bears on what is written. */
 export interface PointsPlan {
@@ -106,12 +113,12 @@ export interface PointsPlan {
     /** Parameters with one value throughout, in alphabetical order. */
     readonly parameters: Readonly<Record<string, string>>;
   };
-  readonly parameters: readonly Axis[];
+  readonly parameters: readonly ScanAxis[];
   readonly points:
     | 'grid'
     | { readonly list: readonly (readonly string[])[] }
     | { readonly sample: number; readonly seed: number };
-  readonly task: Task;
+  readonly task: ScanTask;
   /** The number of points. */
   readonly confirm: number;
 }
@@ -187,23 +194,39 @@ function cellOf({ cell = 1 }: ModelDocument): number {
   return cell;
 }
 
-function axisFrom(axis: z.infer<typeof pointsPlan>['parameters'][number], i: number): Axis {
+function axisFrom(axis: z.infer<typeof pointsPlan>['parameters'][number], i: number): ScanAxis {
   const who = `plan.parameters[${i}]`;
-  if ('values' in axis) {
-    const values = axis.values.map(exactText);
-    const twice = repeated(values);
+  const { name, values, from, to, steps } = axis;
+  const spaced = [from, to, steps].filter((field) => field !== undefined).length;
+  if (values !== undefined ? spaced > 0 : spaced % 3 !== 0)
+    throw new InputError(
+      who,
+      '"values", or "from", "to" and "steps"',
+      values === undefined ? 'a part' : 'both',
+    );
+  if (values !== undefined) {
+    const texts = values.map(exactText);
+    const twice = repeated(texts);
     if (twice !== undefined) throw new InputError(`${who}.values`, 'every value once', `${twice} twice`);
-    return { name: axis.name, values };
+    return { name, values: texts };
   }
-  if (!('steps' in axis)) return { name: axis.name };
-  const { from, to } = { from: exactText(axis.from), to: exactText(axis.to) };
-  if (from === to) throw new InputError(who, 'two different ends', `${from} twice`);
-  return { name: axis.name, from, to, steps: axis.steps };
+  if (from === undefined || to === undefined || steps === undefined) return { name };
+  const ends = { from: exactText(from), to: exactText(to) };
+  if (ends.from === ends.to) throw new InputError(who, 'two different ends', `${ends.from} twice`);
+  return { name, ...ends, steps };
 }
 
 function pointsFrom(points: z.infer<typeof pointsPlan>['points']): PointsPlan['points'] {
-  if (points === 'grid' || 'sample' in points) return points;
-  return { list: points.list.map((row) => row.map(exactText)) };
+  if (points === 'grid') return points;
+  const { list, sample, seed } = points;
+  if (list !== undefined && sample === undefined && seed === undefined)
+    return { list: list.map((row) => row.map(exactText)) };
+  if (list === undefined && sample !== undefined && seed !== undefined) return { sample, seed };
+  throw new InputError(
+    'plan.points',
+    '"list", or "sample" and "seed"',
+    Object.keys(points).join(', ') || 'neither',
+  );
 }
 
 function exactText(value: string | number): string {
@@ -308,15 +331,14 @@ function within<T>(place: string, read: () => T): T {
   }
 }
 
-/** The first fault of the branch of a union that fits best: the one that got furthest. */
+/** Of a union without words of its own: the first fault of the branch that was meant, one that knows all keys and got furthest. */
 function deepest(issue: z.core.$ZodIssue): z.core.$ZodIssue {
-  if (issue.code !== 'invalid_union' || issue.errors.length === 0) return issue;
-  const firsts = issue.errors.flatMap((branch) => branch.slice(0, 1)).map(deepest);
-  const known = firsts.filter((i) => i.code !== 'unrecognized_keys');
-  const best = (known.length > 0 ? known : firsts).reduce(
-    (a, b) => (b.path.length > a.path.length ? b : a),
-    firsts[0]!,
-  );
+  if (issue.code !== 'invalid_union' || issue.message !== 'Invalid input' || issue.errors.length === 0)
+    return issue;
+  const strange = (branch: readonly z.core.$ZodIssue[]) => branch.some((i) => i.code === 'unrecognized_keys');
+  const meant = issue.errors.filter((branch) => !strange(branch));
+  const firsts = (meant.length > 0 ? meant : issue.errors).map((branch) => deepest(branch[0]!));
+  const best = firsts.reduce((a, b) => (b.path.length > a.path.length ? b : a));
   return { ...best, path: [...issue.path, ...best.path] };
 }
 

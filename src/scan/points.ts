@@ -8,7 +8,7 @@ import {
   rational,
   textFromRational,
 } from '../algebra/rational.ts';
-import type { Axis, PointsPlan } from './plan.ts';
+import type { PointsPlan, ScanAxis } from './plan.ts';
 import { distinctBelow, SeededRandom } from './random.ts';
 
 /** All points of a plan in their order: on a grid the last parameter runs fastest, lists and samples keep their own order. */
@@ -33,7 +33,7 @@ export function pointsIn({ parameters, points }: Pick<PointsPlan, 'parameters' |
 }
 
 /** The number of points that the axes span, which may be far above what can be listed. */
-export function gridSize(axes: readonly Axis[]): bigint {
+export function gridSize(axes: readonly ScanAxis[]): bigint {
   return axes.reduce(
     (product, axis) => product * BigInt('steps' in axis ? axis.steps + 1 : valuesOn(axis).length),
     1n,
@@ -41,7 +41,7 @@ export function gridSize(axes: readonly Axis[]): bigint {
 }
 
 /** The values of an axis; none where the plan lists its points. */
-export function valuesOn(axis: Axis): readonly string[] {
+export function valuesOn(axis: ScanAxis): readonly string[] {
   if ('values' in axis) return axis.values;
   if (!('steps' in axis)) return [];
   const [from, to] = [exact(axis.from), exact(axis.to)];

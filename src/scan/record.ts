@@ -85,7 +85,7 @@ const header = z.strictObject({
   tool: z.string().max(100),
 });
 
-export type Answer = z.infer<typeof answer>;
+export type PointAnswer = z.infer<typeof answer>;
 /** The id of a point's certificate, or why there is none. */
 export type CertificateNote = z.infer<typeof certificate>;
 /** `refused`: the model itself is at fault there, for good. `failed`: this run could not, another one may. */

@@ -14,9 +14,9 @@ import type { SearchResult } from '../search/result.ts';
 import { methodFor, searchNow } from '../search/search.ts';
 import { everyRangeCertificate } from '../theory/certificate.ts';
 import { decide } from '../theory/decide.ts';
-import { type PointsPlan, sha256, type Task } from './plan.ts';
+import { type PointsPlan, type ScanTask, sha256 } from './plan.ts';
 import type { Points } from './points.ts';
-import type { Answer, CertificateNote, Outcome } from './record.ts';
+import type { CertificateNote, Outcome, PointAnswer } from './record.ts';
 
 /** An outcome, and the text of the certificate that it names. */
 export interface PointResult {
@@ -60,7 +60,7 @@ export async function runPoint(plan: PointsPlan, values: readonly string[]): Pro
 }
 
 interface Answered {
-  readonly answer: Answer;
+  readonly answer: PointAnswer;
   readonly certificate: { readonly text: string } | { readonly none: string } | null;
 }
 
@@ -95,7 +95,7 @@ function certified(write: () => string): { text: string } | { none: string } {
   }
 }
 
-function searchAnswer(result: SearchResult, withCharges: boolean): Answer {
+function searchAnswer(result: SearchResult, withCharges: boolean): PointAnswer {
   const { hamiltonian, dimensionByRange, minimumCells, charges } = result;
   return {
     kind: 'search',
@@ -113,7 +113,10 @@ function searchAnswer(result: SearchResult, withCharges: boolean): Answer {
   };
 }
 
-function decideAnswer(h: Hamiltonian, { range, waveNumbers }: Extract<Task, { kind: 'decide' }>): Answer {
+function decideAnswer(
+  h: Hamiltonian,
+  { range, waveNumbers }: Extract<ScanTask, { kind: 'decide' }>,
+): PointAnswer {
   const verdict = decide(h, { waveNumbers, ...(range === null ? {} : { searchRange: range }) });
   const bound = 'bound' in verdict ? verdict.bound : null;
   return {
@@ -144,9 +147,9 @@ function decideAnswer(h: Hamiltonian, { range, waveNumbers }: Extract<Task, { ki
 function residualAnswer(
   h: Hamiltonian,
   { model, parameters }: PointsPlan,
-  { candidate, range }: Extract<Task, { kind: 'residual' }>,
+  { candidate, range }: Extract<ScanTask, { kind: 'residual' }>,
   values: readonly string[],
-): Answer {
+): PointAnswer {
   const { names } = parseSyntax(candidate);
   const all = [
     ...Object.entries(model.parameters),

@@ -8,7 +8,7 @@ export interface Shard {
   readonly count: number;
 }
 
-export const WHOLE: Shard = Object.freeze({ index: 0, count: 1 });
+export const WHOLE_PLAN: Shard = Object.freeze({ index: 0, count: 1 });
 
 /** Most shards of one plan. */
 export const MAX_SHARDS = 1_000_000;
@@ -34,7 +34,7 @@ export function textFromShard({ index, count }: Shard): string {
 }
 
 /** Points of the shard among 0 … total − 1, rising. */
-export function* pointsOf({ index, count }: Shard, total: number): Generator<number> {
+export function* pointsOfShard({ index, count }: Shard, total: number): Generator<number> {
   for (let point = index; point < total; point += count) yield point;
 }
 

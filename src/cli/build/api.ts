@@ -17,6 +17,7 @@ const PARTS: readonly (readonly [folder: string, about: string])[] = [
   ['check', 'The trusted checker.'],
   ['theory', 'Statements beyond a single range.'],
   ['physics', 'Uses of charges.'],
+  ['scan', 'One task at many Hamiltonians.'],
   ['report', 'Output for people.'],
   ['lattice', 'Cells, translations, ranges.'],
   ['algebra', 'Pauli strings, operators, exact numbers.'],

@@ -11,8 +11,8 @@ import {
   scanJson,
 } from '../../report/scan-table.ts';
 import { wrap } from '../../report/text.ts';
-import { merge } from '../../scan/merge.ts';
-import { WHOLE } from '../../scan/shard.ts';
+import { mergeRecords } from '../../scan/merge.ts';
+import { WHOLE_PLAN } from '../../scan/shard.ts';
 import { type Command, type CommandInput, Exit } from '../command.ts';
 import { writeFileWhole } from '../output-file.ts';
 import { shareLine } from '../progress.ts';
@@ -52,9 +52,9 @@ Exit status: 0 every point is done and every certificate accepted, 1 something i
       );
     const workers = wholeOption(input, 'workers') ?? 1;
     const folder = await ResultsFolder.existing(path);
-    const files = await folder.files(WHOLE);
+    const files = await folder.files(WHOLE_PLAN);
     const own = files.filter(({ file }) => file.plan === folder.hash);
-    const collected = merge(
+    const collected = mergeRecords(
       folder.points,
       own.flatMap(({ file }) => file.records),
     );

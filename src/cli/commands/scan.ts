@@ -7,7 +7,7 @@ import { CancelledError, HoldfastError, InputError, LimitError, show } from '../
 import { type ReadPlan, readPlan } from '../../scan/plan.ts';
 import { pointsIn } from '../../scan/points.ts';
 import { estimatePlan, type PlanEstimate } from '../../scan/run.ts';
-import { pointsOf, type Shard, textFromShard, WHOLE } from '../../scan/shard.ts';
+import { pointsOfShard, type Shard, textFromShard, WHOLE_PLAN } from '../../scan/shard.ts';
 import { freeMemory } from '../../search/thread.ts';
 import { type Command, type CommandInput, Exit } from '../command.ts';
 import { readText } from '../model-options.ts';
@@ -71,7 +71,7 @@ Exit status: 0 every point of the share is done, 1 some failed, or stopped, 2 ba
     if (slurm && input.values['shard'] !== undefined)
       throw new InputError('--shard', 'none beside --slurm, whose tasks have their own', 'one');
     const text = input.values['shard'];
-    const shard = typeof text === 'string' ? shardFromOption(text, process.env) : WHOLE;
+    const shard = typeof text === 'string' ? shardFromOption(text, process.env) : WHOLE_PLAN;
     const workers = wholeOption(input, 'workers');
     const memory = gigabytesOption(input);
     const { read, path } = await planFromOptions(input);
@@ -89,7 +89,7 @@ async function runHere(
   shard: Shard,
   workers: number,
 ): Promise<number> {
-  const mine = [...pointsOf(shard, folder.points.count)];
+  const mine = [...pointsOfShard(shard, folder.points.count)];
   const finished = await folder.finished(shard);
   const report: ShardReport = { total: mine.length, before: finished.size, done: 0, failed: 0, refused: 0 };
   const line = shareLine(input, `scanning ${(report.total - report.before).toLocaleString('en')} points`);

@@ -12,7 +12,7 @@ import { randomBytes } from 'node:crypto';
 import { type FileHandle, link, mkdir, open, readdir, readFile, rm, writeFile } from 'node:fs/promises';
 import { basename, join } from 'node:path';
 import { HoldfastError, InputError, show } from '../../errors.ts';
-import { isFinal, merge } from '../../scan/merge.ts';
+import { isFinal, mergeRecords } from '../../scan/merge.ts';
 import { planHash, type ReadPlan, readPlan } from '../../scan/plan.ts';
 import { type Points, pointsIn } from '../../scan/points.ts';
 import { headerLine, type PointRecord, type RecordFile, readRecords, recordLine } from '../../scan/record.ts';
@@ -99,7 +99,7 @@ export class ResultsFolder {
     const held = new Set(await namesIn(join(this.path, CERTIFICATES)));
     const files = await this.files(shard);
     const own = files.filter(({ file }) => file.plan === this.hash);
-    const { outcomes } = merge(
+    const { outcomes } = mergeRecords(
       this.points,
       own.flatMap(({ file }) => file.records),
     );

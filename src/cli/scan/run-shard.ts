@@ -1,6 +1,6 @@
 /** One shard of a plan in a pool of threads: what is done already is left alone, what is finished is on the disk at once. */
 import type { Shard } from '../../scan/shard.ts';
-import { pointsOf } from '../../scan/shard.ts';
+import { pointsOfShard } from '../../scan/shard.ts';
 import type { ResultsFolder } from './folder.ts';
 import type { Job } from './jobs.ts';
 import { runPool } from './pool.ts';
@@ -29,7 +29,7 @@ export async function runShard(
   const { points, read } = folder;
   const writer = folder.writer(shard);
   function* jobs(): Generator<Job> {
-    for (const point of pointsOf(shard, points.count))
+    for (const point of pointsOfShard(shard, points.count))
       if (!finished.has(point)) yield { kind: 'run', point, values: points.at(point) };
   }
   try {
