@@ -58,7 +58,7 @@ const answer = z.discriminatedUnion('kind', [
     squaredNorm: rationalText,
     /** 0 when conserved; null where no correction of the ranges searched will do. Absent when none was looked for. */
     correctionRange: count.nullable().optional(),
-    /** Squared distance a cell to the nearest charge, at infinite temperature. */
+    /** Squared distance a cell to the nearest charge of the ranges searched, at infinite temperature; 0 when conserved. */
     squaredDistance: rationalText.optional(),
   }),
 ]);

@@ -50,8 +50,9 @@ export async function runPoint(plan: PointsPlan, values: readonly string[]): Pro
     const note: CertificateNote = { id: await sha256(text) };
     return { outcome: { status: 'done', answer, certificate: note }, certificate: text };
   } catch (error) {
+    // One line: where in the formula it is at fault is no matter of the point.
     if (error instanceof InputError)
-      return { outcome: { status: 'refused', reason: error.message }, certificate: null };
+      return { outcome: { status: 'refused', reason: error.message.split('\n')[0]! }, certificate: null };
     // An allocation that the machine refuses arrives as a RangeError.
     if (error instanceof HoldfastError || error instanceof RangeError)
       return { outcome: { status: 'failed', reason: error.message }, certificate: null };
@@ -159,13 +160,15 @@ function residualAnswer(
   const { conserved, commutator } = residual(h, density);
   const squaredNorm = textFromRational(innerProduct(h.chain, commutator, commutator));
   if (range === null) return { kind: 'residual', conserved, squaredNorm };
-  const correction = conserved ? null : smallestCorrection(h, density, { range });
+  if (conserved)
+    return { kind: 'residual', conserved, squaredNorm, correctionRange: 0, squaredDistance: '0' };
+  const correction = smallestCorrection(h, density, { range });
   const { distance } = nearestCharge(searchNow(h, { range }), density);
   return {
     kind: 'residual',
     conserved,
     squaredNorm,
-    correctionRange: conserved ? 0 : (correction?.range ?? null),
+    correctionRange: correction?.range ?? null,
     squaredDistance: textFromRational(distance),
   };
 }
