@@ -5,6 +5,7 @@ import { benchLattice } from './lattice.ts';
 import { machine } from './measure.ts';
 import { MODELS } from './models.ts';
 import type { BenchOptions } from './options.ts';
+import { benchScaling } from './scaling.ts';
 import { benchSearch } from './search.ts';
 import { markdown, writeTable } from './table.ts';
 
@@ -13,6 +14,10 @@ const BENCHES: Readonly<
 > = {
   search: { what: 'the exhaustive search, beside one compiled pass over all non-zeros', run: benchSearch },
   lattice: { what: 'other lattices, and the uniform chain through both engines', run: benchLattice },
+  scaling: {
+    what: 'what larger machines reach: the tables continued to range 18, and the search by growth',
+    run: benchScaling,
+  },
   external: { what: 'the same matrices through general-purpose exact libraries', run: benchExternal },
 };
 
@@ -28,7 +33,7 @@ ${Object.entries(BENCHES)
   --model NAME     this model only, may be repeated: ${MODELS.map((m) => m.name).join(', ')}
   --samples N      samples a point, 5; fewer where a point takes long
   --limit SECONDS  time limit of a point of another library, 120
-  --write          puts the tables into docs/performance.md
+  --write          puts the tables into docs/performance.md and docs/scaling.md
 `;
 
 async function main(): Promise<number> {

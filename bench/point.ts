@@ -1,5 +1,6 @@
 /** One point of a grid in a process of its own: `point.ts '{"formula": …, "cell": …, "range": …}'` prints one JSON line. */
 import { parseModel } from '../src/model/formula.ts';
+import type { Method } from '../src/search/result.ts';
 import { searchNow } from '../src/search/search.ts';
 import { peakMemory } from './measure.ts';
 
@@ -7,6 +8,7 @@ export interface PointRequest {
   readonly formula: string;
   readonly cell: number;
   readonly range: number;
+  readonly method?: Method;
 }
 
 export interface PointAnswer {
@@ -27,7 +29,10 @@ const hamiltonian = parseModel(request.formula, { cell: request.cell });
 const before = peakMemory();
 const processor = process.cpuUsage();
 const start = process.hrtime.bigint();
-const result = searchNow(hamiltonian, { range: request.range });
+const result = searchNow(hamiltonian, {
+  range: request.range,
+  ...(request.method === undefined ? {} : { method: request.method }),
+});
 const wall = Number(process.hrtime.bigint() - start) / 1e9;
 const used = process.cpuUsage(processor);
 const answer: PointAnswer = {

@@ -1,4 +1,5 @@
 /** The search over a grid of ranges, each sample a fresh process, with the compiled pass beside it. */
+import type { Method } from '../src/search/result.ts';
 import { buildPass, PASS_GRAIN, runPass } from './limit/limit.ts';
 import { clockGrain, grainWarning, run, type Spread, spreadOf } from './measure.ts';
 import {
@@ -25,8 +26,14 @@ export async function measurePoint(
   model: BenchModel,
   range: number,
   { samples, failure }: BenchOptions,
+  method?: Method,
 ): Promise<Point | undefined> {
-  const request: PointRequest = { formula: model.formula, cell: model.cell, range };
+  const request: PointRequest = {
+    formula: model.formula,
+    cell: model.cell,
+    range,
+    ...(method === undefined ? {} : { method }),
+  };
   const times: number[] = [];
   let answer: PointAnswer | undefined;
   let spent = 0;

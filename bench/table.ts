@@ -1,5 +1,5 @@
-/** Tables for the terminal and for `docs/performance.md`: one text serves both. */
-import { existsSync, readFileSync, writeFileSync } from 'node:fs';
+/** Tables for the terminal and for the pages of measurements: one text serves both. */
+import { readFileSync, writeFileSync } from 'node:fs';
 
 export interface Table {
   /** Names the place in the document. */
@@ -8,6 +8,10 @@ export interface Table {
   readonly columns: readonly string[];
   readonly rows: readonly (readonly string[])[];
   readonly notes: readonly string[];
+  /** The page under docs/ that has it; performance.md when absent. */
+  readonly page?: string;
+  /** What stands below it in place of the day and the machine. */
+  readonly heading?: string;
 }
 
 /** Markdown, columns aligned, numbers to the right. */
@@ -27,20 +31,19 @@ export function markdown({ title, columns, rows, notes }: Table): string {
   ].join('\n');
 }
 
-const DOCUMENT = new URL('../docs/performance.md', import.meta.url).pathname;
-
 /**
  * Puts a table where the document has its marks, `<!-- table NAME -->` to `<!-- end NAME -->`; without marks it goes to the end.
  * What stands between marks is never written by hand.
  */
 export function writeTable(table: Table, heading: string): void {
-  const text = existsSync(DOCUMENT) ? readFileSync(DOCUMENT, 'utf8') : '# Performance\n';
+  const document = new URL(`../docs/${table.page ?? 'performance.md'}`, import.meta.url);
+  const text = readFileSync(document, 'utf8');
   const begin = `<!-- table ${table.name} -->`;
   const end = `<!-- end ${table.name} -->`;
-  const block = `${begin}\n\n${markdown(table)}\n\n${heading}\n\n${end}`;
+  const block = `${begin}\n\n${markdown(table)}\n\n${table.heading ?? heading}\n\n${end}`;
   const [from, to] = [text.indexOf(begin), text.indexOf(end)];
   writeFileSync(
-    DOCUMENT,
+    document,
     from >= 0 && to > from
       ? text.slice(0, from) + block + text.slice(to + end.length)
       : `${text.trimEnd()}\n\n${block}\n`,
