@@ -40,10 +40,16 @@ export function hamiltonianAt(
 /**
  * Does the task of a plan at a point. A fault of the point itself (a zero Hamiltonian) is an answer like others; what may go better
  * another time (memory) is marked as failed.
+ *
+ * @param onProgress called with the share done of a search, 0 … 1; throwing from it ends the work with that error
  */
-export async function runPoint(plan: PointsPlan, values: readonly string[]): Promise<PointResult> {
+export async function runPoint(
+  plan: PointsPlan,
+  values: readonly string[],
+  onProgress: (done: number) => void = () => {},
+): Promise<PointResult> {
   try {
-    const { answer, certificate } = answerAt(plan, values);
+    const { answer, certificate } = answerAt(plan, values, onProgress);
     if (certificate === null) return { outcome: { status: 'done', answer }, certificate: null };
     if ('none' in certificate) return { outcome: { status: 'done', answer, certificate }, certificate: null };
     const { text } = certificate;
@@ -65,12 +71,12 @@ interface Answered {
   readonly certificate: { readonly text: string } | { readonly none: string } | null;
 }
 
-function answerAt(plan: PointsPlan, values: readonly string[]): Answered {
+function answerAt(plan: PointsPlan, values: readonly string[], onProgress: (done: number) => void): Answered {
   const h = hamiltonianAt(plan, values);
   const { task } = plan;
   switch (task.kind) {
     case 'search': {
-      const result = searchNow(h, { range: task.range });
+      const result = searchNow(h, { range: task.range, onProgress: ({ done }) => onProgress(done) });
       return {
         answer: searchAnswer(result, task.charges),
         certificate: task.certificates ? certified(() => certificateNow(result)) : null,

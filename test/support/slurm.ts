@@ -23,7 +23,7 @@ export function slurmObstacle(): string | null {
   if (process.getuid?.() !== 0) return 'needs root';
   for (const program of ['setpriv', 'munged', 'slurmctld', 'slurmd', 'sbatch', 'scontrol', 'squeue'])
     if (spawnSync('sh', ['-c', `command -v ${program}`], { env: environmentOf('') }).status !== 0)
-      return `needs the Debian packages slurm-wlm and munge: there is no ${program}`;
+      return `needs the Debian packages slurm-wlm, munge and util-linux: there is no ${program}`;
   return null;
 }
 

@@ -105,7 +105,7 @@ async function runHere(
     await runShard(folder, shard, finished, report, {
       workers: Math.max(1, Math.min(workers, report.total - report.before)),
       signal: stop.signal,
-      onPoint: () => line.show(report.done / (report.total - report.before)),
+      onProgress: (running) => line.show((report.done + running) / (report.total - report.before)),
     });
   } catch (error) {
     if (!(error instanceof CancelledError)) throw error;

@@ -24,6 +24,12 @@ export type Reply =
     }
   | { readonly kind: 'check'; readonly point: number; readonly reason: string | null };
 
+/** Told on the way, now and then. */
+export interface JobProgress {
+  readonly kind: 'progress';
+  readonly done: number;
+}
+
 export interface WorkerInput {
   readonly plan: PointsPlan;
 }

@@ -24,7 +24,11 @@ export async function runShard(
   shard: Shard,
   finished: ReadonlySet<number>,
   report: ShardReport,
-  options: { readonly workers: number; readonly signal: AbortSignal; readonly onPoint: () => void },
+  options: {
+    readonly workers: number;
+    readonly signal: AbortSignal;
+    readonly onProgress: (running: number) => void;
+  },
 ): Promise<void> {
   const { points, read } = folder;
   const writer = folder.writer(shard);
@@ -45,11 +49,11 @@ export async function runShard(
         await writer.append({ point, at: [...points.at(point)], outcome, milliseconds });
         report.done++;
         if (outcome.status !== 'done') report[outcome.status]++;
-        options.onPoint();
       },
       {
         workers: options.workers,
         signal: options.signal,
+        onProgress: options.onProgress,
         onDeath: ({ point }, reason) => ({
           kind: 'run',
           point,

@@ -3,7 +3,10 @@ import { readFile } from 'node:fs/promises';
 import { parentPort, workerData } from 'node:worker_threads';
 import { runPoint } from '../../scan/run.ts';
 import { faultOfCertificate } from './certificate-of-point.ts';
-import type { Job, Reply, WorkerInput } from './jobs.ts';
+import type { Job, JobProgress, Reply, WorkerInput } from './jobs.ts';
+
+/** Milliseconds between two messages about one point. */
+const INTERVAL = 200;
 
 const { plan } = workerData as WorkerInput;
 
@@ -15,7 +18,13 @@ async function replyTo(job: Job): Promise<Reply> {
   const { point, values } = job;
   if (job.kind === 'run') {
     const started = performance.now();
-    const result = await runPoint(plan, values);
+    let told = started;
+    const result = await runPoint(plan, values, (done) => {
+      const now = performance.now();
+      if (now - told < INTERVAL) return;
+      told = now;
+      parentPort?.postMessage({ kind: 'progress', done } satisfies JobProgress);
+    });
     return { kind: 'run', point, result, milliseconds: performance.now() - started };
   }
   let text: string;

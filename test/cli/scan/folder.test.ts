@@ -121,6 +121,15 @@ describe('a folder of results', () => {
   });
 });
 
+it('a disk that refuses is an error, and no record counts as written', async () => {
+  const folder = await ResultsFolder.forPlan(fresh(), plan());
+  rmSync(join(folder.path, 'records'), { recursive: true });
+  const writer = folder.writer(WHOLE_PLAN);
+  await expect(writer.append(await record(folder, 0))).rejects.toThrow(/scan: cannot write to .*records/);
+  await writer.close();
+  expect(await folder.finished(WHOLE_PLAN)).toEqual(new Set());
+});
+
 describe('a folder is refused, and left as it is', () => {
   const contents = (path: string) => readdirSync(path, { recursive: true }).sort();
 
