@@ -52,6 +52,7 @@ export interface CorrectionOptions {
 
 /** More candidates than this are refused: the system is held in memory, about 2 kB a candidate. */
 const MAX_CANDIDATES = 300_000;
+const BYTES_A_CANDIDATE = 2_000;
 
 /**
  * The correction P of smallest range ≤ `range` with `[H, Q + P] = 0`, or null: a proof that there is none that leaves the strings of Q of its full
@@ -86,10 +87,7 @@ export function* correctionSteps(
   if (image.isZero()) return Object.freeze({ density: Operator.zero, range: 0 });
   const own = h.chain.rangeOf(q);
   for (let k = 1; k <= range; k++) {
-    if (candidateCount(h.chain.cell, k) > MAX_CANDIDATES)
-      throw new LimitError(
-        `correction: range ${k} has ${candidateCount(h.chain.cell, k)} candidates, more than ${MAX_CANDIDATES}`,
-      );
+    correctionBytes(h.chain.cell, k);
     yield k;
     const words = representatives(h, k).filter(
       (word) => !(q.numerators.has(word) && h.chain.range(word) === own),
@@ -101,6 +99,20 @@ export function* correctionSteps(
     return Object.freeze({ density, range: h.chain.rangeOf(density) });
   }
   return null;
+}
+
+/**
+ * Bytes that the correction of a range may take.
+ *
+ * @throws LimitError when there are too many candidates
+ */
+export function correctionBytes(cell: number, range: number): number {
+  const candidates = candidateCount(cell, range);
+  if (candidates > MAX_CANDIDATES)
+    throw new LimitError(
+      `correction: range ${range} has ${candidates} candidates, more than ${MAX_CANDIDATES}`,
+    );
+  return candidates * BYTES_A_CANDIDATE;
 }
 
 /** All representatives of range ≤ k, longest first: the order in which charges lead. */

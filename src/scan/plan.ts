@@ -6,7 +6,7 @@ import { z } from 'zod';
 import { exact, textFromRational } from '../algebra/rational.ts';
 import { InputError, show } from '../errors.ts';
 import { MAX_CELL } from '../lattice/chain.ts';
-import { MAX_FORMULA_LENGTH, MAX_NAME_LENGTH, MAX_PARAMETERS } from '../model/limits.ts';
+import { MAX_FORMULA_LENGTH, MAX_MODEL_LENGTH, MAX_NAME_LENGTH, MAX_PARAMETERS } from '../model/limits.ts';
 import {
   LINE,
   LINES,
@@ -163,7 +163,14 @@ export function readPlan(input: unknown): ReadPlan {
   };
   checkNames(draft);
   const plan: PointsPlan = Object.freeze({ ...draft, confirm: confirmed(draft, data.confirm) });
-  return { plan, text: `${JSON.stringify(plan)}\n` };
+  const text = `${JSON.stringify(plan)}\n`;
+  if (text.length > MAX_MODEL_LENGTH)
+    throw new InputError(
+      'plan',
+      `at most ${MAX_MODEL_LENGTH} characters in canonical form`,
+      `${text.length}`,
+    );
+  return { plan, text };
 }
 
 /** SHA-256 of the canonical plan, 64 hexadecimal digits behind `sha256:`. */

@@ -8,7 +8,7 @@ import type { Hamiltonian } from '../model/hamiltonian.ts';
 import { modelFromDocument } from '../model/schema.ts';
 import { parseSyntax } from '../model/syntax.ts';
 import { innerProduct } from '../physics/inner-product.ts';
-import { nearestCharge, residual, smallestCorrection } from '../physics/residual.ts';
+import { correctionBytes, nearestCharge, residual, smallestCorrection } from '../physics/residual.ts';
 import { estimate } from '../search/estimate.ts';
 import type { SearchResult } from '../search/result.ts';
 import { methodFor, searchNow } from '../search/search.ts';
@@ -190,7 +190,7 @@ export interface PlanEstimate {
 /** Points that are looked at: spread over all of them, first and last included. */
 const LOOKED_AT = 64;
 
-/** Without a range `decide` searches a few thousand candidates, and evaluates the lemmas: well under a second for one spin a cell. */
+/** The lemmas and a short search: well under a second for one spin a cell, and about five times as much for each spin more. */
 const DECIDE_SECONDS = 0.2;
 const BASE_BYTES = 150e6;
 
@@ -217,14 +217,18 @@ export function estimatePlan(plan: PointsPlan, points: Points): PlanEstimate {
       continue;
     }
     if (task.kind === 'search' && task.certificates) assertCertifiable(h, task.range);
-    const need = task.range === null ? { bytes: BASE_BYTES, seconds: 0 } : needOf(h, task.range);
+    const need = task.range === null ? { bytes: 0, seconds: 0 } : needOf(h, task.range);
+    const correction =
+      task.kind === 'residual' && task.range !== null ? correctionBytes(plan.model.cell, task.range) : 0;
     const certificates = task.kind === 'search' && task.certificates ? 2 : 1;
-    bytes = Math.max(bytes, need.bytes);
-    seconds += certificates * need.seconds + (task.kind === 'decide' ? DECIDE_SECONDS : 0.02);
+    bytes = Math.max(bytes, need.bytes, BASE_BYTES + correction);
+    seconds +=
+      certificates * need.seconds +
+      (task.kind === 'decide' ? DECIDE_SECONDS * 5 ** (plan.model.cell - 1) : 0.02);
     looked++;
   }
   if (looked === 0) throw refusal ?? new InputError('plan', 'a point', 'none');
-  return { bytes: Math.max(bytes, BASE_BYTES), seconds: seconds / looked };
+  return { bytes, seconds: seconds / looked };
 }
 
 /** What growth needs follows the answer, which nobody knows beforehand: a guess. */

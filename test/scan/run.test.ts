@@ -103,6 +103,7 @@ describe('the estimate of a plan', () => {
 
   it('refuses what cannot be certified, before anything is done', () => {
     expect(() => need({ kind: 'search', range: 14, certificates: true })).toThrow(LimitError);
+    expect(() => need({ kind: 'residual', candidate: 'XX', range: 10 })).toThrow(/correction: range 10 has/);
     expect(need({ kind: 'search', range: 14 }).bytes).toBeGreaterThan(1e9);
   });
 });

@@ -138,7 +138,9 @@ function faultsOf({ collected, rejected, hash }: ScanResults, files: Files): str
     faults.push(`${noun(failed)} failed: ${listed(failed)}${reason}`);
   }
   if (conflicts.length > 0)
-    faults.push(`results differ, and none is taken, for ${noun(conflicts)}: ${listed(conflicts)}`);
+    faults.push(
+      `results differ, and none is taken, for ${noun(conflicts)}: ${listed(conflicts)}; one of the files in records/ is wrong: delete it`,
+    );
   for (const [point, reason] of rejected)
     faults.push(`the certificate of point ${point + 1} is not accepted: ${reason}`);
   if (strays > 0) faults.push(`${strays} record${strays === 1 ? '' : 's'} of no point of this plan`);

@@ -43,8 +43,7 @@ export class ResultsFolder {
    */
   static async forPlan(path: string, read: ReadPlan): Promise<ResultsFolder> {
     const folder = new ResultsFolder(path, read, await planHash(read));
-    const held = await textOf(join(path, PLAN));
-    if (held === undefined) {
+    if ((await textOf(join(path, PLAN))) === undefined) {
       const others = (await namesIn(path)).filter((name) => !name.startsWith(PLAN));
       // Another process may have written its plan, and more, between the two looks.
       if (others.length > 0 && (await textOf(join(path, PLAN))) === undefined)
@@ -54,13 +53,17 @@ export class ResultsFolder {
           `${show(path)}, which holds ${show(others[0])}`,
         );
       await guarded(path, async () => {
-        await mkdir(join(path, RECORDS), { recursive: true });
-        if (read.plan.task.kind !== 'residual' && read.plan.task.certificates)
-          await mkdir(join(path, CERTIFICATES), { recursive: true });
+        await mkdir(path, { recursive: true });
         await writeOnce(join(path, PLAN), read.text);
       });
     }
     await folder.#assertOwn();
+    const { task } = read.plan;
+    await guarded(path, async () => {
+      await mkdir(join(path, RECORDS), { recursive: true });
+      if ('certificates' in task && task.certificates)
+        await mkdir(join(path, CERTIFICATES), { recursive: true });
+    });
     return folder;
   }
 
