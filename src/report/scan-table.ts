@@ -138,8 +138,10 @@ export function labelTitle(task: ScanTask): string {
       return `New charges of range exactly 1 … ${task.range}`;
     case 'decide':
       return 'Verdict for every range';
-    case 'residual':
-      return task.candidate.length <= 40 ? `The candidate ${task.candidate}` : 'The candidate';
+    case 'residual': {
+      const candidate = task.candidate.length <= 40 ? `The candidate ${task.candidate}` : 'The candidate';
+      return task.range === null ? candidate : `${candidate}; corrections of range ≤ ${task.range}`;
+    }
   }
 }
 
