@@ -116,24 +116,54 @@ export interface RecordFile {
 
 /** Reads a file of results; never throws for what is in it. */
 export function readRecords(text: string): RecordFile {
-  const end = text.lastIndexOf('\n') + 1;
-  const [first, ...lines] = text.slice(0, end).split('\n').slice(0, -1);
-  const damaged: number[] = [];
-  const records: PointRecord[] = [];
-  const head = first === undefined ? undefined : parsed(header, first);
-  if (first !== undefined && head === undefined) damaged.push(1);
-  lines.forEach((line, i) => {
+  const reader = new RecordReader();
+  reader.push(text);
+  return reader.finish();
+}
+
+/** The same in pieces, for files longer than a text can be. */
+export class RecordReader {
+  #plan: string | null = null;
+  #shard: Shard | null = null;
+  readonly #records: PointRecord[] = [];
+  readonly #damaged: number[] = [];
+  #lines = 0;
+  #rest: string[] = [];
+
+  /** Takes the next piece of the text, cut anywhere between two characters. */
+  push(piece: string): void {
+    let start = 0;
+    for (let end = piece.indexOf('\n'); end >= 0; end = piece.indexOf('\n', start)) {
+      this.#rest.push(piece.slice(start, end));
+      this.#line(this.#rest.join(''));
+      this.#rest = [];
+      start = end + 1;
+    }
+    if (start < piece.length) this.#rest.push(piece.slice(start));
+  }
+
+  #line(line: string): void {
+    this.#lines++;
+    if (this.#lines === 1) {
+      const head = parsed(header, line);
+      if (head === undefined) this.#damaged.push(1);
+      else [this.#plan, this.#shard] = [head.plan, shardFromText(head.shard)];
+      return;
+    }
     const found = parsed(record, line);
-    if (found === undefined) damaged.push(i + 2);
-    else records.push({ ...found, point: found.point - 1 });
-  });
-  return {
-    plan: head?.plan ?? null,
-    shard: head === undefined ? null : shardFromText(head.shard),
-    records,
-    torn: text.length - end,
-    damaged,
-  };
+    if (found === undefined) this.#damaged.push(this.#lines);
+    else this.#records.push({ ...found, point: found.point - 1 });
+  }
+
+  finish(): RecordFile {
+    return {
+      plan: this.#plan,
+      shard: this.#shard,
+      records: this.#records,
+      torn: this.#rest.reduce((sum, piece) => sum + piece.length, 0),
+      damaged: this.#damaged,
+    };
+  }
 }
 
 function isShard(text: string): boolean {

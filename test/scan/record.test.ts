@@ -5,6 +5,7 @@ import {
   headerLine,
   type Outcome,
   type PointRecord,
+  RecordReader,
   readRecords,
   recordLine,
 } from '../../src/scan/record.ts';
@@ -44,6 +45,15 @@ describe('files of results', () => {
       expect(damaged).toEqual([]);
       expect(records).toHaveLength(Math.max(0, lines - 1));
       expect(torn).toBe(length - (FILE.lastIndexOf('\n', length - 1) + 1) * Number(length > 0));
+    }
+  });
+
+  it('are the same read in pieces, cut anywhere', () => {
+    for (const size of [1, 7, 64, 1000]) {
+      const reader = new RecordReader();
+      const text = `${FILE}{"point"`;
+      for (let i = 0; i < text.length; i += size) reader.push(text.slice(i, i + size));
+      expect(reader.finish()).toEqual(readRecords(text));
     }
   });
 

@@ -71,6 +71,9 @@ Exit status: 0 every point is done and every certificate accepted, 1 something i
     if (map !== null) await write('map.svg', [map]);
     const faults = faultsOf(results, files);
     input.out(summary(results, { accepted, unchecked, map: map !== null, path }));
+    for (const { name, file } of own)
+      if (file.torn > 0)
+        input.note(`collect: ${name} ends in a line that its process, killed, did not finish: left out\n`);
     for (const fault of faults) input.note(`collect: ${fault}\n`);
     return faults.length === 0 ? Exit.done : Exit.failed;
   },
@@ -168,6 +171,18 @@ function listed(points: readonly number[]): string {
   return runs.length <= 20 ? runs.join(', ') : `${runs.slice(0, 20).join(', ')}, …`;
 }
 
+/** Points that are done and have no certificate, with the first reason. */
+function without(outcomes: ScanResults['collected']['outcomes']): string {
+  const reasons = [...outcomes.values()].flatMap((outcome) =>
+    outcome.status === 'done' && outcome.certificate !== undefined && 'none' in outcome.certificate
+      ? [outcome.certificate.none]
+      : [],
+  );
+  return reasons.length === 0
+    ? ''
+    : ` ${reasons.length} point${reasons.length === 1 ? ' has' : 's have'} none: ${reasons[0]}`;
+}
+
 function summary(
   results: ScanResults,
   shown: {
@@ -191,7 +206,11 @@ function summary(
     ...(answers.length > 20 ? [`  … and ${answers.length - 20} other answers`] : []),
     '',
     ...(certified
-      ? [shown.unchecked ? 'Certificates left unread.' : `${shown.accepted} certificates accepted.`]
+      ? [
+          shown.unchecked
+            ? 'Certificates left unread.'
+            : `${shown.accepted} certificates accepted.${without(outcomes)}`,
+        ]
       : []),
     `Plan ${hash}`,
     `Written to ${shown.path}: table.csv, table.json${shown.map ? ', map.svg' : ''}`,

@@ -77,7 +77,7 @@ Exit status: 0 every point of the share is done, 1 some failed, or stopped, 2 ba
     const { read, path } = await planFromOptions(input);
     const need = estimatePlan(read.plan, pointsIn(read.plan));
     if (slurm) return submit(input, read, path, need);
-    const threads = threadsFor({ need, workers, memory: memory ?? freeMemory() });
+    const threads = threadsFor(need, workers, memory ?? freeMemory());
     const folder = await ResultsFolder.forPlan(path, read);
     return runHere(input, folder, shard, threads);
   },
@@ -132,18 +132,12 @@ function summary(report: ShardReport, folder: ResultsFolder, shard: Shard): stri
 }
 
 /** Threads: as many as asked for, or one a core, as far as memory goes. @throws LimitError when not even one fits */
-function threadsFor({
-  need,
-  workers,
-  memory,
-}: {
-  need: PlanEstimate;
-  workers: number | undefined;
-  memory: number;
-}): number {
-  const fit = Math.floor(memory / need.bytes);
-  const wanted = workers ?? coresOf(process.env);
-  if (fit >= (workers ?? 1)) return Math.min(wanted, fit);
+function threadsFor(need: PlanEstimate, workers: number | undefined, memory: number): number {
+  if ((workers ?? 1) * need.bytes <= memory)
+    return (
+      workers ??
+      Math.max(1, Math.min(coresOf(process.env), Math.floor(memory / (SAFETY.memory * need.bytes))))
+    );
   const gigabytes = (bytes: number) => `${(bytes / 1e9).toPrecision(2)} GB`;
   throw new LimitError(
     `scan: a point needs about ${gigabytes(need.bytes)}, ${workers ?? 1} at a time; ${gigabytes(memory)} may be used. Give fewer --workers, or a larger --memory to try all the same`,

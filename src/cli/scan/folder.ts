@@ -9,13 +9,20 @@
  * was killed stays the last. Whoever starts reads which points are done from all files that can hold points of its shard.
  */
 import { randomBytes } from 'node:crypto';
+import { createReadStream } from 'node:fs';
 import { type FileHandle, link, mkdir, open, readdir, readFile, rm, writeFile } from 'node:fs/promises';
 import { basename, join } from 'node:path';
 import { HoldfastError, InputError, show } from '../../errors.ts';
 import { isFinal, mergeRecords } from '../../scan/merge.ts';
 import { planHash, type ReadPlan, readPlan } from '../../scan/plan.ts';
 import { type Points, pointsIn } from '../../scan/points.ts';
-import { headerLine, type PointRecord, type RecordFile, readRecords, recordLine } from '../../scan/record.ts';
+import {
+  headerLine,
+  type PointRecord,
+  type RecordFile,
+  RecordReader,
+  recordLine,
+} from '../../scan/record.ts';
 import { isIn, overlap, type Shard, shardOf } from '../../scan/shard.ts';
 import { writeFileWhole } from '../output-file.ts';
 
@@ -123,8 +130,7 @@ export class ResultsFolder {
     for (const name of (await namesIn(join(this.path, RECORDS))).sort()) {
       const other = shardIn(name);
       if (other === undefined || !overlap(shard, other)) continue;
-      const text = await textOf(join(this.path, RECORDS, name));
-      if (text !== undefined) found.push({ name, file: readRecords(text) });
+      found.push({ name, file: await recordsIn(join(this.path, RECORDS, name)) });
     }
     return found;
   }
@@ -219,14 +225,27 @@ async function guarded<T>(path: string, work: () => Promise<T>): Promise<T> {
   }
 }
 
+async function recordsIn(path: string): Promise<RecordFile> {
+  const reader = new RecordReader();
+  try {
+    for await (const piece of createReadStream(path, 'utf8')) reader.push(piece as string);
+  } catch (error) {
+    throw unreadable(path, error);
+  }
+  return reader.finish();
+}
+
+function unreadable(path: string, error: unknown): InputError {
+  return new InputError('results', 'what can be read', `${show(path)}: ${(error as Error).message}`);
+}
+
 /** Undefined where there is no such file. */
 async function textOf(path: string): Promise<string | undefined> {
   try {
     return await readFile(path, 'utf8');
   } catch (error) {
-    const { code, message } = error as NodeJS.ErrnoException;
-    if (code === 'ENOENT') return undefined;
-    throw new InputError('results', 'files that can be read', `${show(path)}: ${message}`);
+    if ((error as NodeJS.ErrnoException).code === 'ENOENT') return undefined;
+    throw unreadable(path, error);
   }
 }
 
@@ -235,8 +254,7 @@ async function namesIn(path: string): Promise<string[]> {
   try {
     return await readdir(path);
   } catch (error) {
-    const { code, message } = error as NodeJS.ErrnoException;
-    if (code === 'ENOENT') return [];
-    throw new InputError('results', 'a folder that can be read', `${show(path)}: ${message}`);
+    if ((error as NodeJS.ErrnoException).code === 'ENOENT') return [];
+    throw unreadable(path, error);
   }
 }
