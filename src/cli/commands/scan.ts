@@ -1,6 +1,5 @@
 /** `holdfast scan`: one task at many Hamiltonians, on one machine or on a cluster. */
 import { spawnSync } from 'node:child_process';
-import { mkdir } from 'node:fs/promises';
 import { availableParallelism } from 'node:os';
 import { basename, dirname, join, resolve } from 'node:path';
 import { CancelledError, HoldfastError, InputError, LimitError, show } from '../../errors.ts';
@@ -13,7 +12,7 @@ import { type Command, type CommandInput, Exit } from '../command.ts';
 import { readText } from '../model-options.ts';
 import { writeFileWhole } from '../output-file.ts';
 import { shareLine } from '../progress.ts';
-import { ResultsFolder } from '../scan/folder.ts';
+import { makeFolder, ResultsFolder } from '../scan/folder.ts';
 import { runShard, type ShardReport } from '../scan/run-shard.ts';
 import { assertSbatchOption, shardFromOption, slurmScripts } from '../scan/scheduler.ts';
 import { gigabytesOption } from './search.ts';
@@ -214,9 +213,10 @@ async function submit(
     minutes,
     extra,
   });
-  await mkdir(join(results, 'slurm', 'log'), { recursive: true }).catch((error: Error) => {
-    throw new HoldfastError(`scan: cannot write to ${show(results)}: ${error.message}`);
-  });
+  for (const name of ['slurm', join('slurm', 'log')])
+    await makeFolder(join(results, name)).catch((error: Error) => {
+      throw new HoldfastError(`scan: cannot write to ${show(results)}: ${error.message}`);
+    });
   for (const [name, text] of Object.entries(scripts))
     await writeFileWhole('--slurm', join(results, 'slurm', `${name}.sh`), [text], input.signal);
   input.out(

@@ -60,16 +60,15 @@ export class ResultsFolder {
           `${show(path)}, which holds ${show(others[0])}`,
         );
       await guarded(path, async () => {
-        await mkdir(path, { recursive: true });
+        await makeFolder(path);
         await writeOnce(join(path, PLAN), read.text);
       });
     }
     await folder.#assertOwn();
     const { task } = read.plan;
     await guarded(path, async () => {
-      await mkdir(join(path, RECORDS), { recursive: true });
-      if ('certificates' in task && task.certificates)
-        await mkdir(join(path, CERTIFICATES), { recursive: true });
+      await makeFolder(join(path, RECORDS));
+      if ('certificates' in task && task.certificates) await makeFolder(join(path, CERTIFICATES));
     });
     return folder;
   }
@@ -216,6 +215,13 @@ async function writeOnce(path: string, text: string): Promise<void> {
   }
 }
 
+/** One folder below one that exists: Node's recursive form never returns where the kernel refuses in its own way, as under /proc. */
+export async function makeFolder(path: string): Promise<void> {
+  await mkdir(path).catch((error: NodeJS.ErrnoException) => {
+    if (error.code !== 'EEXIST') throw error;
+  });
+}
+
 async function guarded<T>(path: string, work: () => Promise<T>): Promise<T> {
   try {
     return await work();
@@ -236,7 +242,7 @@ async function recordsIn(path: string): Promise<RecordFile> {
 }
 
 function unreadable(path: string, error: unknown): InputError {
-  return new InputError('results', 'what can be read', `${show(path)}: ${(error as Error).message}`);
+  return new InputError('results', 'files that can be read', `${show(path)}: ${(error as Error).message}`);
 }
 
 /** Undefined where there is no such file. */
