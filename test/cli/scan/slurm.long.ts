@@ -56,10 +56,10 @@ async function until(what: string, seconds: number, ready: () => boolean): Promi
 }
 
 describe.skipIf(obstacle !== null)('a scan on Slurm', () => {
-  const scratch = mkdtempSync(join(tmpdir(), 'scan-slurm-'));
-  const plan = join(scratch, 'ensemble.json');
-  const alone = join(scratch, 'alone');
-  const array = join(scratch, 'array');
+  let scratch: string;
+  let plan: string;
+  let alone: string;
+  let array: string;
   let slurm: Slurm;
 
   const holdfast = (...args: string[]) =>
@@ -71,6 +71,12 @@ describe.skipIf(obstacle !== null)('a scan on Slurm', () => {
   const linesOf = (name: string) => readFileSync(join(array, 'records', name), 'utf8').split('\n').length - 2;
 
   beforeAll(async () => {
+    scratch = mkdtempSync(join(tmpdir(), 'scan-slurm-'));
+    [plan, alone, array] = ['ensemble.json', 'alone', 'array'].map((name) => join(scratch, name)) as [
+      string,
+      string,
+      string,
+    ];
     writeFileSync(plan, JSON.stringify(PLAN));
     slurm = await startSlurm(2, 4_000);
   });
