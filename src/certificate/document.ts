@@ -35,13 +35,14 @@ export function statementOf({ hamiltonian, range, charges, minimumCells }: Searc
   );
 }
 
-export function documentText(result: SearchResult, evidence: Evidence): string {
+/** @param evidence of the kind `exhaustive`; of the kind `growth` it is a prime alone */
+export function documentText(result: SearchResult, evidence: Evidence | { readonly prime: number }): string {
   const { hamiltonian, range, dimensionByRange, charges, minimumCells } = result;
   const { chain } = hamiltonian;
   return canonicalText({
     certificate: 'conserved quantities of a spin chain',
     version: 1,
-    kind: 'exhaustive',
+    kind: 'sweeps' in evidence ? 'exhaustive' : 'growth',
     tool: `holdfast ${VERSION}`,
     model: { cell: chain.cell, range: hamiltonian.range, terms: terms(chain, hamiltonian.density) },
     claim: {
@@ -52,11 +53,14 @@ export function documentText(result: SearchResult, evidence: Evidence): string {
       assumes: ASSUMES,
     },
     charges: charges.map((q) => ({ range: q.range, terms: terms(chain, q.density) })),
-    evidence: {
-      prime: evidence.prime,
-      sweeps: evidence.sweeps,
-      pivots: evidence.pivots.map((word) => text(chain, BigInt(word))),
-    },
+    evidence:
+      'sweeps' in evidence
+        ? {
+            prime: evidence.prime,
+            sweeps: evidence.sweeps,
+            pivots: evidence.pivots.map((word) => text(chain, BigInt(word))),
+          }
+        : { prime: evidence.prime },
   });
 }
 

@@ -5,6 +5,7 @@
 import { fields, Malformed, parseCanonical, Rejected, string } from './document.ts';
 import { checkEveryRange, EVERY_RANGE } from './every-range.ts';
 import { checkExhaustive, KIND, type Parts } from './exhaustive.ts';
+import { checkGrowth, GROWTH } from './growth.ts';
 import { sha256 } from './sha256.ts';
 
 export type Verdict =
@@ -29,6 +30,7 @@ export interface CheckOptions {
 const KINDS: ReadonlyMap<string, (parts: Parts) => Generator<number, string>> = new Map([
   [KIND, checkExhaustive],
   [EVERY_RANGE, checkEveryRange],
+  [GROWTH, checkGrowth],
 ]);
 
 /** The check, step by step: yields the share of the work done. Never throws for a bad certificate, whatever is in it. */

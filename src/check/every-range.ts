@@ -32,7 +32,7 @@ function statement(cell: number, atMost: number): string {
     : `${chain}, the translation-invariant conserved quantities of range at most k cells exceed those of range at most k - 1 by at most ${atMost} dimension${atMost === 1 ? '' : 's'}.`;
 }
 
-type Density = Map<number, bigint>;
+export type Density = Map<number, bigint>;
 
 export function* checkEveryRange(parts: Parts): Generator<number, string> {
   const model = fields(parts.model, ['cell', 'range', 'terms'], 'model');
@@ -96,7 +96,7 @@ function integers(terms: readonly Term[]): Density {
 }
 
 /** h on two cells, w on one, and growth by them. */
-class Growth {
+export class Growth {
   readonly bits: number;
   readonly letters: number;
   readonly h: Density = new Map();
@@ -176,7 +176,7 @@ function pairing(x: Density, y: Density): bigint {
 }
 
 /** V1: a ↦ [a⊗1, h] and a ↦ [h, 1⊗a] have full rank modulo p. */
-function* injective(chain: Growth, p: number): Generator<number> {
+export function* injective(chain: Growth, p: number): Generator<number> {
   for (const cell of [0, 1]) {
     const images = Array.from({ length: chain.letters - 1 }, (_, a) =>
       bracket(chain.at(new Map([[a + 1, 1n]]), cell), chain.h),

@@ -48,7 +48,7 @@ export function statement({ cell, range, dimensions, rings }: Claim): string {
   );
 }
 
-interface Charge {
+export interface Charge {
   readonly range: number;
   readonly terms: readonly Term[];
 }
@@ -101,16 +101,16 @@ export function* checkExhaustive(parts: Parts): Generator<number, string> {
   }
 }
 
-/** The fields of section 2 with their forms, and C1 to C4; also that the modulus is prime, and the limits. */
-function read(parts: Parts) {
+/** Model, claim and charges of section 2 with their forms, and C1 to C4. */
+export function readClaim(parts: Parts, widest: number, longest: number) {
   const model = fields(parts.model, ['cell', 'range', 'terms'], 'model');
-  const cell = natural(model.cell, 'cell', 1, MAX_CELL);
+  const cell = natural(model.cell, 'cell', 1, widest);
   const reach = natural(model.range, 'range of the model', 1, MAX_RANGE);
   const terms = readTerms(model.terms, cell, reach, 'model');
   if (terms.length === 0) throw new Malformed('the model has no term');
 
   const claim = fields(parts.claim, ['range', 'dimensions', 'rings', 'statement', 'assumes'], 'claim');
-  const range = natural(claim.range, 'range of the claim', 1, MAX_RANGE);
+  const range = natural(claim.range, 'range of the claim', 1, longest);
   const dimensions = list(claim.dimensions, 'dimensions', MAX_ENTRIES).map((d) =>
     natural(d, 'a dimension', 0, MAX_CHARGES),
   );
@@ -123,21 +123,6 @@ function read(parts: Parts) {
     const charge = fields(value, ['range', 'terms'], name);
     const own = natural(charge.range, `range of ${name}`, 1, range);
     return { range: own, terms: readTerms(charge.terms, cell, own, name) };
-  });
-
-  const evidence = fields(parts.evidence, ['prime', 'sweeps', 'pivots'], 'evidence');
-  const p = natural(evidence.prime, 'prime', 3, PRIME_BOUND - 1);
-  const sweeps = list(evidence.sweeps, 'sweeps', MAX_SWEEPS).map((value) => {
-    const pair = list(value, 'a sweep', 2);
-    if (pair.length !== 2) throw new Malformed('a sweep is not a pair');
-    return {
-      output: natural(pair[0]!, 'range of a sweep', 1, range + reach - 1),
-      used: natural(pair[1]!, 'uses of a sweep', 1, 2 ** 32),
-    };
-  });
-  const pivots = list(evidence.pivots, 'pivots', MAX_ROWS).map((value) => {
-    const text = string(value, 'a pivot');
-    return { word: readWord(text, cell, range + reach - 1, 'pivots'), cells: text.length / cell };
   });
 
   // C1 to C4.
@@ -155,6 +140,26 @@ function read(parts: Parts) {
     throw new Rejected('the statement does not say what the numbers say');
   if (assumes.join('\n') !== ASSUMES.join('\n'))
     throw new Rejected('the assumptions are not those of this kind');
+  return { cell, reach, terms, range, charges, words };
+}
+
+/** All of section 2; also that the modulus is prime, and the limits. */
+function read(parts: Parts) {
+  const { cell, reach, terms, range, charges, words } = readClaim(parts, MAX_CELL, MAX_RANGE);
+  const evidence = fields(parts.evidence, ['prime', 'sweeps', 'pivots'], 'evidence');
+  const p = natural(evidence.prime, 'prime', 3, PRIME_BOUND - 1);
+  const sweeps = list(evidence.sweeps, 'sweeps', MAX_SWEEPS).map((value) => {
+    const pair = list(value, 'a sweep', 2);
+    if (pair.length !== 2) throw new Malformed('a sweep is not a pair');
+    return {
+      output: natural(pair[0]!, 'range of a sweep', 1, range + reach - 1),
+      used: natural(pair[1]!, 'uses of a sweep', 1, 2 ** 32),
+    };
+  });
+  const pivots = list(evidence.pivots, 'pivots', MAX_ROWS).map((value) => {
+    const text = string(value, 'a pivot');
+    return { word: readWord(text, cell, range + reach - 1, 'pivots'), cells: text.length / cell };
+  });
 
   if (!isPrime(p)) throw new Rejected('the modulus of the evidence is not a prime');
   if (cell * range > MAX_SPINS)
@@ -192,7 +197,7 @@ function commutes(h: Hamiltonian, { terms }: Charge, longest: number): boolean {
 }
 
 /** L3: for every j, the range-j parts of the charges of range j are independent; modulo p implies over the rationals. */
-function* leadingPartsIndependent(charges: readonly Charge[], p: number): Generator<number, void> {
+export function* leadingPartsIndependent(charges: readonly Charge[], p: number): Generator<number, void> {
   const columns = new Map<number, number>();
   const rows = charges.map(({ range, terms }): Row => {
     const denominator = terms.reduce((d, t) => lcm(d, t.coefficient.denominator), 1n);

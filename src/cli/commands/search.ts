@@ -15,6 +15,7 @@ import { printResult } from '../../report/text.ts';
 import { search as searchInBackground, searchLattice } from '../../search/background.ts';
 import { allWaves } from '../../search/lattice/all-waves.ts';
 import type { SearchResult } from '../../search/result.ts';
+import { methodFor } from '../../search/search.ts';
 import { checkWithProgress } from '../certificate-file.ts';
 import { type Command, type CommandInput, Exit } from '../command.ts';
 import { asksForLattice, LATTICE_HELP, LATTICE_OPTIONS, latticeFromOptions } from '../lattice-options.ts';
@@ -77,7 +78,8 @@ Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
       throw new InputError('command line', '--json or --latex', 'both');
     const { certificate, report, picture } = input.values as Readonly<Record<string, string | undefined>>;
     const model = await modelFromOptions(input);
-    if (certificate !== undefined) assertCertifiable(model, range);
+    const method = methodFor(model, range, input.values['growth'] === true ? 'growth' : undefined);
+    if (certificate !== undefined) assertCertifiable(model, range, method);
     const checkpoint = input.values['checkpoint'] as string | undefined;
     const line = progressLine(input);
     const result = await searchInBackground(model, {
