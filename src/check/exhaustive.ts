@@ -101,7 +101,7 @@ export function* checkExhaustive(parts: Parts): Generator<number, string> {
   }
 }
 
-/** Model, claim and charges of section 2 with their forms, and C1 to C4. */
+/** Model, claim and charges of section 2, in form; what they say is for `checkClaim`, once the evidence has been read too. */
 export function readClaim(parts: Parts, widest: number, longest: number) {
   const model = fields(parts.model, ['cell', 'range', 'terms'], 'model');
   const cell = natural(model.cell, 'cell', 1, widest);
@@ -125,7 +125,12 @@ export function readClaim(parts: Parts, widest: number, longest: number) {
     return { range: own, terms: readTerms(charge.terms, cell, own, name) };
   });
 
-  // C1 to C4.
+  return { cell, reach, terms, range, dimensions, rings, words, assumes, charges };
+}
+
+/** C1 to C4. */
+export function checkClaim(form: ReturnType<typeof readClaim>): void {
+  const { cell, reach, terms, range, dimensions, rings, words, assumes, charges } = form;
   if (terms.reduce((most, t) => Math.max(most, t.range), 0) !== reach)
     throw new Rejected('the range of the model is not that of its terms');
   if (rings !== 2 * range + 2 * reach - 3)
@@ -140,12 +145,12 @@ export function readClaim(parts: Parts, widest: number, longest: number) {
     throw new Rejected('the statement does not say what the numbers say');
   if (assumes.join('\n') !== ASSUMES.join('\n'))
     throw new Rejected('the assumptions are not those of this kind');
-  return { cell, reach, terms, range, charges, words };
 }
 
 /** All of section 2; also that the modulus is prime, and the limits. */
 function read(parts: Parts) {
-  const { cell, reach, terms, range, charges, words } = readClaim(parts, MAX_CELL, MAX_RANGE);
+  const form = readClaim(parts, MAX_CELL, MAX_RANGE);
+  const { cell, reach, terms, range, charges, words } = form;
   const evidence = fields(parts.evidence, ['prime', 'sweeps', 'pivots'], 'evidence');
   const p = natural(evidence.prime, 'prime', 3, PRIME_BOUND - 1);
   const sweeps = list(evidence.sweeps, 'sweeps', MAX_SWEEPS).map((value) => {
@@ -161,6 +166,7 @@ function read(parts: Parts) {
     return { word: readWord(text, cell, range + reach - 1, 'pivots'), cells: text.length / cell };
   });
 
+  checkClaim(form);
   if (!isPrime(p)) throw new Rejected('the modulus of the evidence is not a prime');
   if (cell * range > MAX_SPINS)
     throw new Rejected('the range of the claim exceeds the limits of this checker');

@@ -6,7 +6,7 @@
 import { lcm, phase, type Term } from './chain.ts';
 import { fields, natural, Rejected } from './document.ts';
 import { type Density, Growth, injective } from './every-range.ts';
-import { type Charge, leadingPartsIndependent, type Parts, readClaim } from './exhaustive.ts';
+import { type Charge, checkClaim, leadingPartsIndependent, type Parts, readClaim } from './exhaustive.ts';
 import { inverse, isPrime, multiply, PRIME_BOUND, residue } from './modular.ts';
 
 export const GROWTH = 'growth';
@@ -16,9 +16,11 @@ const MAX_CELL = 2;
 const MAX_SPINS = 26;
 
 export function* checkGrowth(parts: Parts): Generator<number, string> {
-  const { cell, reach, terms, range, charges, words } = readClaim(parts, MAX_CELL, MAX_SPINS);
+  const form = readClaim(parts, MAX_CELL, MAX_SPINS);
+  const { cell, reach, terms, range, charges, words } = form;
   const evidence = fields(parts.evidence, ['prime'], 'evidence');
   const p = natural(evidence.prime, 'prime', 3, PRIME_BOUND - 1);
+  checkClaim(form);
   if (!isPrime(p)) throw new Rejected('the modulus of the evidence is not a prime');
   if (reach !== 2) throw new Rejected('the interaction does not have range 2');
   if (cell * (range + 2) > MAX_SPINS)
