@@ -66,6 +66,10 @@ export class AffineForest {
     }
   }
 
+  isRoot(element: number): boolean {
+    return this.#link[element] === ROOT;
+  }
+
   /** f·x_a + offset·t = 0 for a root a. */
   settle(a: number, f: number, offset: readonly number[]): void {
     const factor = this.#negativeInverse(f);
@@ -94,7 +98,7 @@ export class AffineForest {
   }
 
   #scaled(factor: number, offset: readonly number[]): readonly number[] {
-    return offset.length === 0
+    return offset.every((v) => v === 0)
       ? NO_PARAMETERS
       : offset.map((v) => (v === 0 ? 0 : this.field.multiply(factor, v)));
   }

@@ -12,69 +12,74 @@ import type { SparseMatrix, SparseVector } from './sparse.ts';
 /** Beyond so many parameters, plain sparse elimination of the rest is cheaper. */
 const MAX_PARAMETERS = 96;
 
-/** A basis of { x : M x = 0 } over GF(p); as many vectors as `columns − rank`. */
-export function kernel(matrix: SparseMatrix, field: Field): SparseVector[] {
-  const { p, multiply } = field;
-  const residues = matrix.values.map((v) => field.residue(v));
-  const forest = new AffineForest(matrix.columns, field);
-  const roots: number[] = [];
-  const factors: number[] = [];
-  const offset: number[] = [];
+/** A null space, and how it was found. */
+export interface Kernel {
+  /** A basis of { x : M x = 0 } over GF(p); as many vectors as `columns − rank`. */
+  readonly vectors: SparseVector[];
+  /** What told something new, in order: row i as i, a column c that became a parameter as −1 − c. */
+  readonly steps: readonly number[];
+}
 
-  /** Leaves the row as Σ factors·roots + offset·t. */
-  const reduce = (row: number): void => {
-    roots.length = 0;
-    factors.length = 0;
-    offset.length = 0;
-    for (let i = matrix.start[row]!; i < matrix.start[row + 1]!; i++) {
-      forest.find(matrix.column[i]!);
-      const value = residues[matrix.value[i]!]!;
-      for (let j = 0; j < forest.offset.length; j++)
-        if (forest.offset[j] !== 0) offset[j] = ((offset[j] ?? 0) + multiply(value, forest.offset[j]!)) % p;
-        else offset[j] ??= 0;
-      if (forest.root < 0) continue;
-      const term = multiply(value, forest.weight);
-      const at = roots.indexOf(forest.root);
-      if (at < 0) {
-        roots.push(forest.root);
-        factors.push(term);
-      } else factors[at] = (factors[at]! + term) % p;
-    }
-    let kept = 0;
-    for (let i = 0; i < roots.length; i++)
-      if (factors[i] !== 0) {
-        roots[kept] = roots[i]!;
-        factors[kept++] = factors[i]!;
-      }
-    roots.length = kept;
-    factors.length = kept;
+/**
+ * The null space of a matrix.
+ *
+ * @param steps those of the same matrix modulo another prime: only these rows are looked at, once each. The result is the null
+ *   space of these rows, larger than that of the matrix when a prime is unlucky.
+ */
+export function kernel(matrix: SparseMatrix, field: Field, steps?: readonly number[]): Kernel {
+  const forest = new AffineForest(matrix.columns, field);
+  const row = new ReducedRow(matrix, forest);
+  const taken: number[] = [];
+  const constraints: number[][] = [];
+  const left: number[] = [];
+
+  /** Uses a row of at most two roots; false when it has more. */
+  const use = (index: number): boolean => {
+    row.reduce(index);
+    const { length, roots, factors, offset } = row;
+    if (length > 2) return false;
+    if (length === 0) {
+      if (offset.every((v) => v === 0)) return true;
+      constraints.push(offset.slice());
+    } else if (length === 1) forest.settle(roots[0]!, factors[0]!, offset);
+    else forest.tie(roots[0]!, factors[0]!, roots[1]!, factors[1]!, offset);
+    taken.push(index);
+    return true;
+  };
+  const promote = (column: number): void => {
+    forest.promote(column);
+    taken.push(-1 - column);
   };
 
-  const constraints: number[][] = [];
-  let open: number[] = Array.from({ length: matrix.rows }, (_, row) => row);
-  const met = new Uint32Array(matrix.columns);
-  for (;;) {
-    const left: number[] = [];
-    met.fill(0);
-    let heaviest = -1;
-    for (const row of open) {
-      reduce(row);
-      if (roots.length === 0) {
-        if (offset.some((v) => v !== 0)) constraints.push(offset.slice());
-      } else if (roots.length === 1) forest.settle(roots[0]!, factors[0]!, offset);
-      else if (roots.length === 2) forest.tie(roots[0]!, factors[0]!, roots[1]!, factors[1]!, offset);
-      else {
-        left.push(row);
-        for (const root of roots) if (++met[root]! > (heaviest < 0 ? 0 : met[heaviest]!)) heaviest = root;
+  if (steps === undefined) {
+    let open = Uint32Array.from({ length: matrix.rows }, (_, index) => index);
+    const met = new Uint32Array(matrix.columns);
+    for (;;) {
+      let count = 0;
+      met.fill(0);
+      let heaviest = -1;
+      for (const index of open) {
+        if (use(index)) continue;
+        open[count++] = index;
+        for (let i = 0; i < row.length; i++) {
+          const root = row.roots[i]!;
+          if (++met[root]! > (heaviest < 0 ? 0 : met[heaviest]!)) heaviest = root;
+        }
       }
+      const stuck = count === open.length;
+      open = open.subarray(0, count);
+      if (count === 0) break;
+      if (!stuck) continue;
+      if (forest.parameters === MAX_PARAMETERS) break;
+      promote(heaviest);
     }
-    const stuck = left.length === open.length;
-    open = left;
-    if (open.length === 0) break;
-    if (!stuck) continue;
-    if (forest.parameters === MAX_PARAMETERS) break;
-    forest.promote(heaviest);
-  }
+    for (const index of open) left.push(index);
+  } else
+    for (const step of steps) {
+      if (step >= 0) {
+        if (!use(step)) left.push(step);
+      } else if (forest.isRoot(-1 - step)) promote(-1 - step);
+    }
 
   // What is left: roots, then parameters, as columns of the core.
   const coreOf = new Int32Array(matrix.columns).fill(-1);
@@ -84,9 +89,13 @@ export function kernel(matrix: SparseMatrix, field: Field): SparseVector[] {
     if (forest.root === column) coreOf[column] = count++;
   }
   const rows: SparseVector[] = constraints.map((values) => sparse([], [], values, count));
-  for (const row of open) {
-    reduce(row);
-    const order = roots.map((_, i) => i).sort((a, b) => coreOf[roots[a]!]! - coreOf[roots[b]!]!);
+  for (const index of left) {
+    row.reduce(index);
+    taken.push(index);
+    const { roots, factors, offset } = row;
+    const order = Array.from({ length: row.length }, (_, i) => i).sort(
+      (a, b) => coreOf[roots[a]!]! - coreOf[roots[b]!]!,
+    );
     rows.push(
       sparse(
         order.map((i) => coreOf[roots[i]!]!),
@@ -98,6 +107,7 @@ export function kernel(matrix: SparseMatrix, field: Field): SparseVector[] {
   }
   const space = eliminate(rows, count + forest.parameters, field).nullSpace();
   const value = new Float64Array(count + forest.parameters);
+  const { p, multiply } = field;
   const vectors = space.map((): { columns: number[]; values: number[] } => ({ columns: [], values: [] }));
   // Where a core unknown is non-zero: vectors by core column.
   const users: number[][] = Array.from(value, () => []);
@@ -124,7 +134,7 @@ export function kernel(matrix: SparseMatrix, field: Field): SparseVector[] {
       vectors[v]!.values.push(sum);
     }
   }
-  return vectors;
+  return { vectors, steps: taken };
 }
 
 /** A row of the core: roots first, parameters from column `count` on. */
@@ -135,4 +145,51 @@ function sparse(columns: number[], values: number[], offset: readonly number[], 
     values.push(v);
   });
   return { columns, values };
+}
+
+/** A row in terms of what is known: Σ factors·roots + offset·t. The buffers are overwritten by each row. */
+class ReducedRow {
+  length = 0;
+  readonly roots: number[] = [];
+  readonly factors: number[] = [];
+  readonly offset: number[] = [];
+  readonly #residues: readonly number[];
+
+  constructor(
+    readonly matrix: SparseMatrix,
+    readonly forest: AffineForest,
+  ) {
+    this.#residues = matrix.values.map((v) => forest.field.residue(v));
+  }
+
+  reduce(index: number): void {
+    const { matrix, forest, roots, factors, offset } = this;
+    const { p, multiply } = forest.field;
+    offset.length = forest.parameters;
+    offset.fill(0);
+    let length = 0;
+    for (let i = matrix.start[index]!; i < matrix.start[index + 1]!; i++) {
+      forest.find(matrix.column[i]!);
+      const value = this.#residues[matrix.value[i]!]!;
+      const known = forest.offset;
+      for (let j = 0; j < known.length; j++)
+        if (known[j] !== 0) offset[j] = (offset[j]! + multiply(value, known[j]!)) % p;
+      const { root } = forest;
+      if (root < 0) continue;
+      const term = multiply(value, forest.weight);
+      let at = 0;
+      while (at < length && roots[at] !== root) at++;
+      if (at === length) {
+        roots[length] = root;
+        factors[length++] = term;
+      } else factors[at] = (factors[at]! + term) % p;
+    }
+    let kept = 0;
+    for (let i = 0; i < length; i++)
+      if (factors[i] !== 0) {
+        roots[kept] = roots[i]!;
+        factors[kept++] = factors[i]!;
+      }
+    this.length = kept;
+  }
 }

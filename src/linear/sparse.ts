@@ -61,3 +61,46 @@ export function transpose({ start, index, value }: Lines, lines: number): Lines 
     }
   return { start: newStart, index: newIndex, value: newValue };
 }
+
+/** Some columns of a matrix, and the rows that meet them; both keep their order. */
+export interface Restriction {
+  readonly matrix: SparseMatrix;
+  /** New numbers of the old columns and rows, −1 for those left out. */
+  readonly columnOf: Int32Array;
+  readonly rowOf: Int32Array;
+}
+
+/** @param keep 1 for the columns that stay */
+export function restrictColumns(matrix: SparseMatrix, keep: Uint8Array): Restriction {
+  const columnOf = new Int32Array(matrix.columns);
+  let columns = 0;
+  for (let c = 0; c < matrix.columns; c++) columnOf[c] = keep[c] === 1 ? columns++ : -1;
+  const rowOf = new Int32Array(matrix.rows);
+  const start = new Uint32Array(matrix.rows + 1);
+  const column = new Uint32Array(matrix.column.length);
+  const value = new Uint16Array(matrix.column.length);
+  let rows = 0;
+  let size = 0;
+  for (let row = 0; row < matrix.rows; row++) {
+    for (let i = matrix.start[row]!; i < matrix.start[row + 1]!; i++) {
+      const c = columnOf[matrix.column[i]!]!;
+      if (c < 0) continue;
+      column[size] = c;
+      value[size++] = matrix.value[i]!;
+    }
+    rowOf[row] = size > start[rows]! ? rows++ : -1;
+    start[rows] = size;
+  }
+  return {
+    matrix: {
+      columns,
+      rows,
+      start: start.slice(0, rows + 1),
+      column: column.slice(0, size),
+      value: value.slice(0, size),
+      values: matrix.values,
+    },
+    columnOf,
+    rowOf,
+  };
+}

@@ -26,18 +26,26 @@ export type Mirror = Int32Array | null;
 export interface ModularBasis {
   readonly even: readonly SparseVector[];
   readonly odd: readonly SparseVector[];
+  /** How the kernel was found: see `kernel`. */
+  readonly steps: readonly number[];
 }
 
-export function modularBasis(matrix: SparseMatrix, mirror: Mirror, field: Field): ModularBasis {
-  const vectors = kernel(matrix, field);
-  if (mirror === null) return { even: reducedBasis(vectors, matrix.columns, field), odd: [] };
+/** @param steps those of another prime, to go the same way again */
+export function modularBasis(
+  matrix: SparseMatrix,
+  mirror: Mirror,
+  field: Field,
+  steps?: readonly number[],
+): ModularBasis {
+  const { vectors, steps: taken } = kernel(matrix, field, steps);
+  if (mirror === null) return { even: reducedBasis(vectors, matrix.columns, field), odd: [], steps: taken };
   const part = (sign: number) =>
     reducedBasis(
       vectors.map((v) => symmetrised(v, mirror, sign, field)),
       matrix.columns,
       field,
     );
-  return { even: part(1), odd: part(field.p - 1) };
+  return { even: part(1), odd: part(field.p - 1), steps: taken };
 }
 
 /** v + sign · (mirror image of v). The null space is mirror symmetric, so its vectors have no entry without a mirror column. */
@@ -95,7 +103,7 @@ export function liftCharges(
     const next = fields.next();
     if (next.done) return { ok: false, reason: 'unlucky' };
     const field = next.value;
-    const basis = modularBasis(matrix, mirror, field);
+    const basis = modularBasis(matrix, mirror, field, first.basis.steps);
     const dimension = basis.even.length + basis.odd.length;
     if (dimension < residues.length) return { ok: false, reason: 'unlucky' };
     if (shapeOf(basis) !== shape) continue;

@@ -9,7 +9,7 @@ import { type Rational, rational } from '../algebra/rational.ts';
 import type { Word } from '../algebra/word.ts';
 import { InputError, LimitError, show, VerificationError } from '../errors.ts';
 import { PRIME_BOUND, primeFieldsBelow } from '../linear/field.ts';
-import type { SparseVector } from '../linear/sparse.ts';
+import { restrictColumns, type SparseVector } from '../linear/sparse.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
 import { assemble, type RestrictedSystem } from './assemble.ts';
 import { type IntegerVector, liftCharges, type Mirror, type ModularBasis, modularBasis } from './charges.ts';
@@ -70,7 +70,7 @@ export function searchNow(h: Hamiltonian, options: SearchOptions): SearchResult 
     const alive = assemble(h, strings, range, solving);
     const found = modularBasis(alive.matrix, mirrorOf(h, alive.strings), field);
     solving(0.5);
-    const { system, basis } = restricted(h, alive, found, range);
+    const { system, basis } = restricted(alive, found);
     const lifted = liftCharges(system.matrix, mirrorOf(h, system.strings), { basis, field }, fields, () =>
       solving(1),
     );
@@ -109,20 +109,20 @@ export function methodFor(h: Hamiltonian, range: number, method?: Method): Metho
 
 /** The columns that charges use. Later primes need no others, and the exact check sees every equation that meets them. */
 function restricted(
-  h: Hamiltonian,
-  system: RestrictedSystem,
+  { matrix, strings }: RestrictedSystem,
   basis: ModularBasis,
-  range: number,
 ): { system: RestrictedSystem; basis: ModularBasis } {
-  const renumbered = new Int32Array(system.strings.length);
-  for (const v of [...basis.even, ...basis.odd]) for (const c of v.columns) renumbered[c] = 1;
-  const strings = system.strings.filter((_, c) => renumbered[c] === 1);
-  let count = 0;
-  for (let c = 0; c < renumbered.length; c++) if (renumbered[c] === 1) renumbered[c] = count++;
-  const moved = (v: SparseVector) => ({ columns: v.columns.map((c) => renumbered[c]!), values: v.values });
+  const keep = new Uint8Array(matrix.columns);
+  for (const v of [...basis.even, ...basis.odd]) for (const c of v.columns) keep[c] = 1;
+  const { matrix: smaller, columnOf, rowOf } = restrictColumns(matrix, keep);
+  const moved = (v: SparseVector) => ({ columns: v.columns.map((c) => columnOf[c]!), values: v.values });
+  const steps = basis.steps.flatMap((step) => {
+    const moved = step >= 0 ? rowOf[step]! : columnOf[-1 - step]!;
+    return moved < 0 ? [] : [step >= 0 ? moved : -1 - moved];
+  });
   return {
-    system: assemble(h, strings, range),
-    basis: { even: basis.even.map(moved), odd: basis.odd.map(moved) },
+    system: { matrix: smaller, strings: strings.filter((_, c) => keep[c] === 1) },
+    basis: { even: basis.even.map(moved), odd: basis.odd.map(moved), steps },
   };
 }
 
