@@ -3,7 +3,7 @@
  * search that follows growth measured beside them. Written to docs/scaling.md.
  */
 import { readFileSync } from 'node:fs';
-import { MAX_SPINS } from '../src/search/sweep.ts';
+import { MAX_SPINS } from '../src/search/addresses.ts';
 import { candidatesOf, MODELS } from './models.ts';
 import type { BenchOptions } from './options.ts';
 import { measurePoint } from './search.ts';

@@ -10,8 +10,9 @@ import type { BackgroundOptions } from './background.ts';
 import { estimate, requireMemory } from './estimate.ts';
 import type { LatticeResult } from './lattice/result.ts';
 import { estimateLattice, type LatticeOptions, searchLatticeNow } from './lattice/search.ts';
+import { methodFor } from './plan.ts';
 import type { SearchResult } from './result.ts';
-import { methodFor, searchNow } from './search.ts';
+import { searchNow } from './search.ts';
 
 /** What a page may use unless told otherwise: browsers do not say what is free. */
 const MEMORY = 2e9;
@@ -22,7 +23,7 @@ const MEMORY = 2e9;
  * @throws LimitError, CancelledError, InputError as `search` in Node; InputError for a checkpoint, since a page has no folders
  */
 export async function search(h: Hamiltonian, options: BackgroundOptions): Promise<SearchResult> {
-  const { signal, memory = MEMORY, checkpoint, onProgress, ...rest } = options;
+  const { signal, memory = MEMORY, checkpoint, threads: _, onProgress, ...rest } = options;
   if (checkpoint !== undefined) throw new InputError('search', 'no checkpoint in a browser', checkpoint);
   if (methodFor(h, options.range, options.method) !== 'growth')
     requireMemory(`range ${options.range}`, estimate(h, options.range), memory);

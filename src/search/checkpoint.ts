@@ -1,5 +1,5 @@
 /**
- * Finished layers of a search on disk. One file a prime, replaced as a whole: a kill at any moment leaves the old one or the new.
+ * Finished layers of a search on disk. One file a prime and sector, replaced as a whole: a kill at any moment leaves the old one or the new.
  *
  * Format: one line of JSON (model, range, prime, layer, lengths, checksum), then the numbers as little-endian doubles.
  */
@@ -16,6 +16,7 @@ import {
 } from 'node:fs';
 import { join } from 'node:path';
 import { InputError, show } from '../errors.ts';
+import type { Sector } from './sectors.ts';
 import type { SnapshotStore } from './sweep.ts';
 import type { PlainModel } from './transfer.ts';
 
@@ -31,9 +32,15 @@ interface Header {
  *
  * @throws InputError on loading when the folder holds a search of another model or range; damaged files count as absent
  */
-export function checkpointIn(folder: string, model: PlainModel, range: number): SnapshotStore {
-  const task = digest(describe(model, range));
-  const fileOf = (prime: number) => join(folder, `sweep-${prime}.checkpoint`);
+export function checkpointIn(
+  folder: string,
+  model: PlainModel,
+  range: number,
+  { grading, value }: Sector,
+): SnapshotStore {
+  const part = grading.bits === 0 ? '' : `-${value + 1}of${2 ** grading.bits}`;
+  const task = digest(describe(model, range) + part);
+  const fileOf = (prime: number) => join(folder, `sweep-${prime}${part}.checkpoint`);
   return {
     load(prime) {
       if (!existsSync(fileOf(prime))) return undefined;

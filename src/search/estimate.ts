@@ -1,7 +1,7 @@
 /** What a search will need, before it starts. */
-import { InputError, LimitError, show } from '../errors.ts';
+import { LimitError } from '../errors.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
-import { MAX_SPINS } from './sweep.ts';
+import { planOf } from './plan.ts';
 
 export interface Estimate {
   /** Columns of the system: representatives of range 1 … k, 4^{nk} − 4^{n(k−1)}. */
@@ -42,23 +42,23 @@ const BASE_BYTES = 90e6;
 const NANOSECONDS = 8;
 
 /**
- * Candidates, memory and time of a search.
+ * Candidates, memory and time of an exhaustive search.
  *
+ * @param sectors those that are in memory at the same time, of how many
  * @throws InputError when the range is no positive integer; LimitError when candidates do not fit the packed form
  */
-export function estimate(h: Hamiltonian, range: number): Estimate {
-  if (!(Number.isInteger(range) && range >= 1))
-    throw new InputError('search', 'a range of one cell or more, a whole number', show(range));
+export function estimate(
+  h: Hamiltonian,
+  range: number,
+  sectors: { readonly together: number; readonly all: number } = { together: 1, all: 1 },
+): Estimate {
+  planOf(h, { range, method: 'exhaustive', sectors: sectors.all });
   const n = h.chain.cell;
   const size = 4 ** (n * range);
   const hitBits = n * (range + h.range - 2) <= 16 ? 4 ** (n * (range + Math.max(0, h.range - 2))) : 0;
-  if (n * range > MAX_SPINS)
-    throw new LimitError(
-      `search: range ${range} in cells of ${n} is ${n * range} spins, ${(size * (1 - 4 ** -n)).toPrecision(3)} candidates; the exhaustive search takes up to ${MAX_SPINS} spins`,
-    );
   return {
     candidates: candidateCount(n, range),
-    bytes: Math.round(BASE_BYTES + 8 * size + hitBits / 8),
+    bytes: Math.round(sectors.together * (BASE_BYTES + (8 * size) / sectors.all + hitBits / 8)),
     seconds: (size * NANOSECONDS * (h.density.size + 2)) / 1e9,
   };
 }

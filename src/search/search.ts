@@ -6,17 +6,20 @@
  */
 import { Operator } from '../algebra/operator.ts';
 import { type Rational, rational } from '../algebra/rational.ts';
-import type { Word } from '../algebra/word.ts';
-import { InputError, LimitError, show, VerificationError } from '../errors.ts';
+import { compareWords, type Word } from '../algebra/word.ts';
+import { LimitError, VerificationError } from '../errors.ts';
 import { PRIME_BOUND, primeFieldsBelow } from '../linear/field.ts';
 import { restrictColumns, type SparseVector } from '../linear/sparse.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
+import { MAX_SPINS } from './addresses.ts';
 import { assemble, type RestrictedSystem } from './assemble.ts';
 import { type IntegerVector, liftCharges, type Mirror, type ModularBasis, modularBasis } from './charges.ts';
 import { candidateCount } from './estimate.ts';
 import { livingByGrowth } from './growth.ts';
+import { planOf } from './plan.ts';
 import { type Charge, type Method, resultFrom, type SearchResult } from './result.ts';
-import { aliveStrings, MAX_SPINS, type OnProgress, type SnapshotStore } from './sweep.ts';
+import { type Sector, sectorCandidates } from './sectors.ts';
+import { aliveStrings, type OnProgress, type Progress, type SnapshotStore } from './sweep.ts';
 
 export interface SearchOptions {
   /** Largest range of the charges, in cells. */
@@ -27,11 +30,16 @@ export interface SearchOptions {
   readonly primesBelow?: number;
   /**
    * How the candidates that may be non-zero are found. `exhaustive` visits all of them; `growth` follows the strings that stay
-   * alive, for injective nearest-neighbour interactions. Default: exhaustive up to `MAX_SPINS` spins, growth beyond.
+   * alive, for injective nearest-neighbour interactions. Default: exhaustive as far as its arrays go, growth beyond.
    */
   readonly method?: Method;
+  /**
+   * Cuts the exhaustive search into at most so many conserved sectors, 1 to 8, one after the other: memory falls as they rise.
+   * The answer does not depend on it. Default: 1, or as many as it takes to fit the arrays.
+   */
+  readonly sectors?: number;
   /** Keeps finished layers, so that a search that was killed goes on from the last one. */
-  readonly store?: SnapshotStore;
+  readonly store?: (sector: Sector) => SnapshotStore;
 }
 
 /** Primes tried for the upper bound before giving up. Two in a row have never been seen to fail. */
@@ -40,20 +48,47 @@ const MAX_ATTEMPTS = 12;
 /**
  * All charges of range ≤ `range` of H: a canonical basis with exact coefficients, complete by proof.
  *
- * Synchronous; see `search` for one that leaves the event loop free. Memory: 8 bytes a packed candidate, 4^(n·range), and what
- * is left alive. Cost grows like the number of candidates.
+ * Synchronous; see `search` for one that leaves the event loop free. Memory: 8 bytes a packed candidate, 4^(n·range) over the
+ * number of sectors, and what is left alive. Cost grows like the number of candidates.
  *
  * @throws InputError when the range is no positive integer; LimitError when the candidates do not fit
  */
 export function searchNow(h: Hamiltonian, options: SearchOptions): SearchResult {
-  const { range, onProgress = () => {}, primesBelow: bound = PRIME_BOUND, store } = options;
-  if (!(Number.isInteger(range) && range >= 1))
-    throw new InputError('search', 'a range of one cell or more, a whole number', show(range));
   const started = performance.now();
-  const candidates = candidateCount(h.chain.cell, range);
+  const plan = planOf(h, options);
+  const { onProgress } = options;
+  const parts = plan.sectors.map((sector, i, { length }) =>
+    searchSector(h, sector, {
+      ...options,
+      ...(onProgress === undefined
+        ? {}
+        : { onProgress: (at: Progress) => onProgress({ ...at, done: (i + at.done) / length }) }),
+    }),
+  );
+  const again = (sector: Sector, primesBelow: number) => searchSector(h, sector, { ...options, primesBelow });
+  for (let late = latecomers(parts); late !== undefined; late = latecomers(parts))
+    for (const i of late.parts) parts[i] = again(plan.sectors[i]!, late.primesBelow);
+  return combined(h, options.range, parts, plan.method, performance.now() - started);
+}
+
+/** The charges within a sector, in canonical order, and the primes that it took. */
+export interface SectorCharges {
+  readonly charges: readonly Charge[];
+  /** The first one carries the upper bound; all of them together the coefficients. */
+  readonly primes: readonly number[];
+}
+
+/**
+ * One sector of a search by itself.
+ *
+ * @throws LimitError when the candidates do not fit
+ */
+export function searchSector(h: Hamiltonian, sector: Sector, options: SearchOptions): SectorCharges {
+  const { range, onProgress = () => {}, primesBelow: bound = PRIME_BOUND, store } = options;
+  const { method } = planOf(h, options);
+  const candidates = sectorCandidates(sector, range);
   const solving = (done: number) => onProgress({ stage: 'solve', layer: 0, done, candidates });
   const fields = primeFieldsBelow(bound);
-  const method = methodFor(h, range, options.method);
   let refused = false;
   for (let attempt = 0; attempt < MAX_ATTEMPTS; attempt++) {
     const next = fields.next();
@@ -62,7 +97,7 @@ export function searchNow(h: Hamiltonian, options: SearchOptions): SearchResult 
     const strings =
       method === 'growth'
         ? livingByGrowth(h, range, field, onProgress)
-        : aliveStrings(h, range, field, onProgress, store);
+        : aliveStrings(h, range, field, { onProgress, store: store?.(sector), sector });
     if (strings === undefined) {
       refused = true;
       continue;
@@ -75,23 +110,10 @@ export function searchNow(h: Hamiltonian, options: SearchOptions): SearchResult 
       solving(1),
     );
     if (!lifted.ok) continue;
-    const charges = lifted.charges
-      .map((charge) => chargeOf(h, system.strings, charge))
-      .sort((a, b) => a.range - b.range || Number(a.parity === 'odd') - Number(b.parity === 'odd'));
-    return resultFrom({
-      hamiltonian: h,
-      range,
-      dimensionByRange: Object.freeze(
-        Array.from({ length: range }, (_, j) => charges.filter((q) => q.range <= j + 1).length),
-      ),
-      charges,
-      expansionOfH: h.range > range ? null : expansion(h, charges),
-      minimumCells: 2 * range + 2 * h.range - 3,
-      method,
-      primes: Object.freeze(lifted.primes),
-      candidates,
-      milliseconds: performance.now() - started,
-    });
+    return {
+      charges: lifted.charges.map((charge) => chargeOf(h, system.strings, charge)),
+      primes: lifted.primes,
+    };
   }
   if (refused)
     throw new LimitError(
@@ -102,9 +124,53 @@ export function searchNow(h: Hamiltonian, options: SearchOptions): SearchResult 
   );
 }
 
-/** The method of a search when the caller leaves it open. */
-export function methodFor(h: Hamiltonian, range: number, method?: Method): Method {
-  return method ?? (h.chain.cell * range > MAX_SPINS ? 'growth' : 'exhaustive');
+/**
+ * One prime carries the upper bound of all sectors: parts that finished with a larger one than another part are to be done
+ * again below this bound. Undefined when all agree. Happens when a prime is unlucky, about once in 10⁷.
+ */
+export function latecomers(
+  parts: readonly SectorCharges[],
+): { readonly parts: readonly number[]; readonly primesBelow: number } | undefined {
+  const smallest = Math.min(...parts.map((part) => part.primes[0]!));
+  const late = parts.flatMap((part, i) => (part.primes[0]! > smallest ? [i] : []));
+  return late.length === 0 ? undefined : { parts: late, primesBelow: smallest + 1 };
+}
+
+/**
+ * The result of a search from those of all its sectors. Their strings are disjoint, so reduced echelon forms put together are
+ * the reduced echelon form of the whole.
+ */
+export function combined(
+  h: Hamiltonian,
+  range: number,
+  parts: readonly SectorCharges[],
+  method: Method,
+  milliseconds: number,
+): SearchResult {
+  const charges = parts
+    .flatMap((part) => part.charges)
+    .map((charge) => ({ charge, leading: leadingWord(h, charge) }))
+    .sort(
+      (a, b) =>
+        a.charge.range - b.charge.range ||
+        Number(a.charge.parity === 'odd') - Number(b.charge.parity === 'odd') ||
+        compareWords(a.leading, b.leading),
+    )
+    .map(({ charge }) => charge);
+  return resultFrom({
+    hamiltonian: h,
+    range,
+    dimensionByRange: Object.freeze(
+      Array.from({ length: range }, (_, j) => charges.filter((q) => q.range <= j + 1).length),
+    ),
+    charges,
+    expansionOfH: h.range > range ? null : expansion(h, charges),
+    minimumCells: 2 * range + 2 * h.range - 3,
+    method,
+    primes: Object.freeze([...new Set(parts.flatMap((part) => part.primes))].sort((a, b) => b - a)),
+    candidates: candidateCount(h.chain.cell, range),
+    milliseconds,
+  });
 }
 
 /** The columns that charges use. Later primes need no others, and the exact check sees every equation that meets them. */

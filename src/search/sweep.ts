@@ -1,25 +1,25 @@
 /**
  * The exhaustive search's first stage: which candidates are zero in every charge, modulo p.
  *
- * State is one link and one weight a candidate (8 bytes), addressed by the packed string itself; no equation is stored. Outputs
+ * State is one link and one weight a candidate of the sector (8 bytes); no equation is stored. Outputs
  * are visited by falling range m. In a layer, strings that are still alive and reach an output without growing mark it as hit
  * (few in most models); every other output has parents by growth at its two ends only, and those depend on its first and last
- * window alone, so the layer is swept block by block with the parents of a block known beforehand: rows of one parent first,
- * they kill most strings, then rows of two or more. Hit outputs are gathered in full, twice.
+ * window alone (see `EndRows`). Hit outputs are gathered in full, twice.
  *
  * The order only decides how much is found; every step uses an equation of the system, so what it calls zero is zero.
  * Cost: a few nanoseconds an output for the swept part, plus some look-ups a term and cell for a hit one.
  */
-import { LimitError } from '../errors.ts';
 import type { Field } from '../linear/field.ts';
 import { WeightedForest } from '../linear/forest.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
+import { Addresses } from './addresses.ts';
 import { EndCounts, EndPairs } from './end-pairs.ts';
+import { EndRows } from './end-rows.ts';
 import { HitSet } from './hit-set.ts';
-import { type End, type EndParent, endParents, Neighbourhood, windowTable } from './windows.ts';
-
-/** Spins a candidate may have: its packed form indexes an array. */
-export const MAX_SPINS = 15;
+import { Living } from './living.ts';
+import { type Sector, sectorCandidates, ungraded } from './sectors.ts';
+import { ShortRow } from './short-row.ts';
+import { Neighbourhood, type WindowTable, windowTable } from './windows.ts';
 
 /** What a running search tells. */
 export interface Progress {
@@ -59,336 +59,32 @@ export type OnProgress = (progress: Progress) => void;
 /** Ends of which more than one string in so many is alive are crowded. */
 const CROWDED_SHARE = 64;
 
-/** Rows of more classes than this wait for the elimination of the core. */
-const MAX_CLASSES = 12;
+/** Pairs of a first and a last window whose rows are prepared one by one. */
+const MAX_WINDOW_PAIRS = 2 ** 25;
+
+export interface SweepOptions {
+  readonly onProgress?: OnProgress;
+  readonly store?: SnapshotStore | undefined;
+  /** Candidates to look at; all of them by default. */
+  readonly sector?: Sector;
+}
 
 /** The strings of range ≤ `range` that are not known to be zero after the sweeps, packed, in rising order. */
 export function aliveStrings(
   h: Hamiltonian,
   range: number,
   field: Field,
-  onProgress: OnProgress = () => {},
-  store?: SnapshotStore,
+  options: SweepOptions = {},
 ): Float64Array {
-  const n = h.chain.cell;
-  const r = h.range;
-  if (n * range > MAX_SPINS)
-    throw new LimitError(
-      `search: range ${range} in cells of ${n} is ${n * range} spins; arrays hold candidates of up to ${MAX_SPINS}`,
-    );
-  const table = windowTable(h);
-  const { bits, cellBits } = table;
-  const coefficients = Float64Array.from(table.values, (v) => field.residue(v));
-  const near = new Neighbourhood(table, range + r - 1);
-  const bound = (cells: number) => 2 ** (cellBits * cells);
-  const limit = bound(range);
-  const cellMask = bound(1) - 1;
-  const windowSize = 2 ** bits;
-  // "Nothing in the first cell, X in the second" is no representative: its place is the zero root's.
-  const zero = bound(1);
-  const forest = new WeightedForest(limit - 1, zero, field);
-  const link = forest.link;
-  const ends = endParents(h, table);
-  const candidates = limit - bound(range - 1);
-
-  let layer = 0;
-  let visited = 0;
-  const total = [...Array(range + r - 1)].reduce((sum, _, i) => sum + bound(i + 1), 0);
-  const report = () => onProgress({ stage: 'sweep', layer, done: visited / total, candidates });
-
-  const classes = new Float64Array(MAX_CLASSES);
-  const factors = new Float64Array(MAX_CLASSES);
-  let count = 0;
-  /** Adds a parent to the row being reduced; false when the row has grown too long. */
-  const addParent = (parent: number, coefficient: number): boolean => {
-    if (link[parent] === zero) return true;
-    const root = forest.root(parent);
-    if (root === zero) return true;
-    const term = field.multiply(coefficient, forest.rootWeight);
-    for (let i = 0; i < count; i++)
-      if (classes[i] === root) {
-        factors[i] = (factors[i]! + term) % field.p;
-        return true;
-      }
-    if (count === MAX_CLASSES) return false;
-    classes[count] = root;
-    factors[count++] = term;
-    return true;
-  };
-  const use = (): void => {
-    let kept = 0;
-    for (let i = 0; i < count; i++)
-      if (factors[i] !== 0) {
-        classes[kept] = classes[i]!;
-        factors[kept++] = factors[i]!;
-      }
-    if (kept === 1) forest.setZero(classes[0]!);
-    else if (kept === 2) forest.tie(classes[0]!, factors[0]!, classes[1]!, factors[1]!);
-  };
-
-  const gather = (output: number, m: number): void => {
-    near.visit(output, m);
-    count = 0;
-    for (let i = 0; i < near.count; i++) {
-      const parent = near.images[i]!;
-      if (parent < limit && !addParent(parent, coefficients[table.backward[near.entries[i]!]!]!)) return;
-    }
-    use();
-  };
-
-  // Strings of each range that were alive when last looked at: a scan of the candidates happens once a range.
-  const living: Float64Array[] = [];
-  const livingOf = (cells: number): Float64Array => {
-    const known = living[cells];
-    const list = known === undefined ? scan(bound(cells - 1), bound(cells)) : known.filter(isAlive);
-    living[cells] = list;
-    return list;
-  };
-  const isAlive = (string: number): boolean =>
-    link[string] === 0 || (link[string] !== zero && forest.root(string) !== zero);
-  const scan = (begin: number, end: number): Float64Array => {
-    let list = new Float64Array(1024);
-    let length = 0;
-    for (let string = begin; string < end; string++) {
-      if (link[string] === zero || (string & cellMask) === 0 || !isAlive(string)) continue;
-      if (length === list.length) {
-        const longer = new Float64Array(2 * length);
-        longer.set(list);
-        list = longer;
-      }
-      list[length++] = string;
-    }
-    report();
-    return list.slice(0, length);
-  };
-
-  /** Marks every output of range m that a living string of range ≥ `from` reaches; of range m itself, only strings that count. */
-  const mark = (m: number, from: number, counts: (string: number) => boolean, hits: HitSet): void => {
-    const low = bound(m - 1);
-    const high = bound(m);
-    for (let cells = from; cells <= Math.min(range, m + r - 1); cells++) {
-      const strings = livingOf(cells);
-      for (let at = 0; at < strings.length; at++) {
-        if ((at & 0x3fff) === 0) report();
-        if (cells === m && !counts(strings[at]!)) continue;
-        near.visit(strings[at]!, cells);
-        for (let i = 0; i < near.count; i++) {
-          const output = near.images[i]!;
-          if (output >= low && output < high) hits.add(output);
-        }
-      }
-    }
-  };
-
-  /**
-   * One block of growth rows: the outputs with a given last window, for every middle and a list of first windows. All strings in
-   * play are an offset plus the middle times a unit, so the loops touch typed arrays only, in rising order of memory.
-   */
-  const killBlock = (block: Block, middles: number, hits: HitSet | undefined): void => {
-    const { length, outputs, parents, units } = block;
-    for (let middle = 0; middle < middles; middle++) {
-      if ((middle & 0xffff) === 0) report();
-      for (let i = 0; i < length; i++) {
-        const parent = parents[i]! + Math.imul(middle, units[i]!);
-        if (link[parent] === zero) continue;
-        if (hits?.has(outputs[i]! + middle * windowSize)) continue;
-        forest.setZero(parent);
-      }
-    }
-  };
-
-  const tieBlock = (
-    block: Block,
-    right: EndParent,
-    rightUnit: number,
-    middles: number,
-    hits: HitSet | undefined,
-  ): void => {
-    const { length, outputs, windows, parents, units, factors: lefts } = block;
-    const offset = right.image * rightUnit;
-    const coefficient = coefficients[right.value]!;
-    for (let middle = 0; middle < middles; middle++) {
-      if ((middle & 0xffff) === 0) report();
-      const fromRight = offset + Math.imul(middle, windowSize);
-      for (let i = 0; i < length; i++) {
-        const a = fromRight + windows[i]!;
-        const b = parents[i]! + Math.imul(middle, units[i]!);
-        const zeroA = link[a] === zero;
-        if (zeroA && link[b] === zero) continue;
-        if (hits?.has(outputs[i]! + middle * windowSize)) continue;
-        if (zeroA) forest.setZero(b);
-        else if (link[b] === zero) forest.setZero(a);
-        else forest.tie(a, coefficient, b, lefts[i]!);
-      }
-    }
-  };
-
-  const reduceBlock = (
-    lefts: readonly End[],
-    rights: readonly EndParent[],
-    top: number,
-    rightUnit: number,
-    middles: number,
-    hits: HitSet | undefined,
-  ): void => {
-    for (let middle = 0; middle < middles; middle++) {
-      if ((middle & 0xffff) === 0) report();
-      const from = middle * windowSize;
-      for (const left of lefts) {
-        if (hits?.has(top + from + left.window)) continue;
-        count = 0;
-        let short = true;
-        for (const q of rights)
-          short &&= addParent(q.image * rightUnit + from + left.window, coefficients[q.value]!);
-        for (const q of left.parents)
-          short &&= addParent((q.image + from + top) / bound(q.lost), coefficients[q.value]!);
-        if (short) use();
-      }
-    }
-  };
-
-  /**
-   * Rows of the outputs of range m that are not hit and whose end cells are in `ready`: those of one parent (`single`), or of
-   * several. Parents come from the two ends: by growth, or of range m with end cells in `crowded`.
-   */
-  const endRows = (
-    m: number,
-    hits: HitSet | undefined,
-    ready: EndPairs,
-    crowded: EndPairs,
-    single: boolean,
-  ): void => {
-    const middles = bound(m - 2 * r);
-    const rightUnit = bound(m - r);
-    const lost = Math.max(1, m - range);
-    for (const last of ends.last) {
-      const top = last.window * rightUnit;
-      const leftParents = (ls: readonly End[]): Block =>
-        blockOf(ls, top, (l) => {
-          const q = l.parents[0]!;
-          return {
-            parent: (q.image + top) / bound(q.lost),
-            unit: windowSize / bound(q.lost),
-            factor: coefficients[q.value]!,
-          };
-        });
-      for (let cell = 1; cell <= cellMask; cell++) {
-        if (!ready.has(cell, last.cell)) continue;
-        const rights = last.parents.filter(
-          (q) => q.lost >= lost || (q.lost === 0 && crowded.has(cell, q.cell)),
-        );
-        const lefts = ends.first.flatMap((end) =>
-          end.cell !== cell
-            ? []
-            : [
-                {
-                  ...end,
-                  parents: end.parents.filter(
-                    (q) => q.lost >= lost || (q.lost === 0 && crowded.has(q.cell, last.cell)),
-                  ),
-                },
-              ],
-        );
-        const leftsWith = (parents: number) => lefts.filter((l) => l.parents.length === parents);
-        const right = rights[0];
-        if (single) {
-          if (right === undefined) killBlock(leftParents(leftsWith(1)), middles, hits);
-          else if (rights.length === 1)
-            killBlock(
-              blockOf(leftsWith(0), top, (l) => ({
-                parent: right.image * rightUnit + l.window,
-                unit: windowSize,
-                factor: 0,
-              })),
-              middles,
-              hits,
-            );
-          continue;
-        }
-        if (rights.length === 1) tieBlock(leftParents(leftsWith(1)), right!, rightUnit, middles, hits);
-        const longer = rights.length > 1 ? lefts : lefts.filter((l) => l.parents.length > 1);
-        if (longer.length > 0) reduceBlock(longer, rights, top, rightUnit, middles, hits);
-      }
-    }
-  };
-
-  const gatherHits = (m: number, hits: HitSet, ready: EndPairs): void => {
-    const lastUnit = bound(m - 1);
-    for (let visit = 0, seen = 0; visit < 2; visit++)
-      hits.forEach((output) => {
-        if (!ready.has(output & cellMask, Math.floor(output / lastUnit))) return;
-        gather(output, m);
-        if ((++seen & 0x3fff) === 0) report();
-      });
-  };
-
-  /**
-   * A layer of outputs, in stages by their two end cells. While most strings of range m with some ends are alive, a mark for each
-   * would cost more than it tells: outputs with such ends wait, and for the others those strings are parents that their end
-   * windows give away, like growth. Each stage thins out the strings for the next.
-   */
-  const sweepLayer = (m: number): void => {
-    const apart = m >= 2 * r;
-    const all = EndPairs.all(cellMask + 1);
-    const none = EndPairs.none(cellMask + 1);
-    if (m > range || !apart) {
-      const hits = apart && m === range + r - 1 ? undefined : new HitSet(bound(m));
-      if (hits !== undefined) mark(m, apart ? m : Math.max(1, m - r + 1), () => true, hits);
-      if (apart) for (const single of [true, false]) endRows(m, hits, all, none, single);
-      if (hits !== undefined) gatherHits(m, hits, all);
-      return;
-    }
-    const hits = new HitSet(bound(m));
-    const lastUnit = bound(m - 1);
-    const crowd = bound(m - 2) / CROWDED_SHARE;
-    for (let pending = all; !pending.isEmpty(); ) {
-      const counts = new EndCounts(cellMask + 1);
-      for (const string of livingOf(m)) counts.add(string & cellMask, Math.floor(string / lastUnit));
-      let crowded = counts.above(crowd);
-      let ready = pending.without(crowded);
-      if (ready.isEmpty()) {
-        // Nothing thins out any more: every living string is marked, whatever it costs.
-        ready = pending;
-        crowded = none;
-      }
-      hits.clear();
-      mark(m, m, (string) => !crowded.has(string & cellMask, Math.floor(string / lastUnit)), hits);
-      for (const single of [true, false]) endRows(m, hits, ready, crowded, single);
-      gatherHits(m, hits, ready);
-      pending = pending.without(ready);
-    }
-  };
-
-  const snapshot = (): Snapshot => ({
-    layer,
-    // A layer's outputs grow from strings up to r − 1 cells shorter; below that nothing has been touched.
-    ranges: Array.from({ length: range }, (_, i) => i + 1)
-      .filter((cells) => layer === 1 || cells > layer - r)
-      .map((cells) => {
-        const strings = livingOf(cells);
-        const roots = strings.map((string) => forest.root(string));
-        return { cells, strings, roots, weights: strings.map((string) => forest.weightToRoot(string)) };
-      }),
-  });
-  const restore = (saved: Snapshot): void => {
-    for (const { cells, strings, roots, weights } of saved.ranges) {
-      for (let string = bound(cells - 1); string < bound(cells); string++)
-        if ((string & cellMask) !== 0) link[string] = zero;
-      for (const [i, string] of strings.entries()) forest.restore(string, roots[i]!, weights[i]!);
-      living[cells] = strings;
-    }
-  };
-
+  const { onProgress = () => {}, store, sector = ungraded(h) } = options;
+  const sweep = new Sweep(h, range, field, sector, onProgress);
   const saved = store?.load(field.p);
-  if (saved !== undefined) restore(saved);
-  for (layer = saved === undefined ? range + r - 1 : saved.layer - 1; layer >= 1; layer--) {
-    sweepLayer(layer);
-    visited += bound(layer);
-    report();
-    if (layer === 1 || layer >= 2 * r) store?.save(field.p, snapshot());
+  if (saved !== undefined) sweep.restore(saved);
+  for (let layer = saved === undefined ? range + h.range - 1 : saved.layer - 1; layer >= 1; layer--) {
+    sweep.layer(layer);
+    if (layer === 1 || layer >= 2 * h.range) store?.save(field.p, sweep.snapshot(layer));
   }
-
-  const alive = Array.from({ length: range }, (_, i) => livingOf(i + 1));
+  const alive = Array.from({ length: range }, (_, i) => sweep.living.of(i + 1));
   const list = new Float64Array(alive.reduce((sum, strings) => sum + strings.length, 0));
   let at = 0;
   for (const strings of alive) {
@@ -398,30 +94,214 @@ export function aliveStrings(
   return list;
 }
 
-/** Growth rows that differ in their first window only; entry i of each array belongs to one window. */
-interface Block {
-  readonly length: number;
-  readonly windows: Int32Array;
-  /** Outputs at middle 0; with longer interactions they pass 32 bits, parents never do. */
-  readonly outputs: Float64Array;
-  /** Parent at middle 0, and what it gains a middle. */
-  readonly parents: Int32Array;
-  readonly units: Int32Array;
-  readonly factors: Float64Array;
-}
+class Sweep {
+  readonly living: Living;
+  readonly #h: Hamiltonian;
+  readonly #range: number;
+  readonly #table: WindowTable;
+  readonly #near: Neighbourhood;
+  readonly #coefficients: Float64Array;
+  readonly #addresses: Addresses;
+  readonly #forest: WeightedForest;
+  readonly #row: ShortRow;
+  #ends: EndRows | undefined;
+  readonly #report: () => void;
+  #layer = 0;
+  #visited = 0;
 
-function blockOf(
-  lefts: readonly End[],
-  top: number,
-  of: (left: End) => { parent: number; unit: number; factor: number },
-): Block {
-  const rows = lefts.map(of);
-  return {
-    length: rows.length,
-    windows: Int32Array.from(lefts, (l) => l.window),
-    outputs: Float64Array.from(lefts, (l) => top + l.window),
-    parents: Int32Array.from(rows, (row) => row.parent),
-    units: Int32Array.from(rows, (row) => row.unit),
-    factors: Float64Array.from(rows, (row) => row.factor),
-  };
+  constructor(h: Hamiltonian, range: number, field: Field, sector: Sector, onProgress: OnProgress) {
+    const r = h.range;
+    this.#h = h;
+    this.#range = range;
+    this.#table = windowTable(h);
+    const { cellBits, values } = this.#table;
+    this.#near = new Neighbourhood(this.#table, range + r - 1);
+    this.#coefficients = Float64Array.from(values, (v) => field.residue(v));
+    this.#addresses = new Addresses(sector, cellBits, range);
+    this.#forest = new WeightedForest(this.#addresses.size, this.#addresses.size + 1, field);
+    this.#row = new ShortRow(this.#forest);
+    this.living = new Living(cellBits, this.#addresses, this.#forest);
+    const candidates = sectorCandidates(sector, range);
+    let total = 0;
+    for (let cells = 1; cells < range + r; cells++) total += this.#bound(cells);
+    this.#report = () =>
+      onProgress({ stage: 'sweep', layer: this.#layer, done: this.#visited / total, candidates });
+  }
+
+  /**
+   * A layer of outputs, in stages by their two end cells. While most strings of range m with some ends are alive, a mark for each
+   * would cost more than it tells: outputs with such ends wait, and for the others those strings are parents that their end
+   * windows give away, like growth. Each stage thins out the strings for the next.
+   */
+  layer(m: number): void {
+    this.#layer = m;
+    this.#stages(m);
+    this.#visited += this.#bound(m);
+    this.#report();
+  }
+
+  snapshot(layer: number): Snapshot {
+    return {
+      layer,
+      // A layer's outputs grow from strings up to r − 1 cells shorter; below that nothing has been touched.
+      ranges: Array.from({ length: this.#range }, (_, i) => i + 1)
+        .filter((cells) => layer === 1 || cells > layer - this.#h.range)
+        .map((cells) => {
+          const strings = this.living.of(cells);
+          const roots = strings.map((string) => this.#forest.root(this.#addresses.of(string)));
+          const weights = strings.map((string) => this.#forest.weightToRoot(this.#addresses.of(string)));
+          return { cells, strings, roots, weights };
+        }),
+    };
+  }
+
+  restore(saved: Snapshot): void {
+    const { link, zero } = this.#forest;
+    const cellMask = this.#bound(1) - 1;
+    for (const { cells, strings, roots, weights } of saved.ranges) {
+      this.#addresses.forEach(this.#bound(cells - 1), this.#bound(cells), (string, element) => {
+        if ((string & cellMask) !== 0) link[element] = zero;
+      });
+      strings.forEach((string, i) => {
+        this.#forest.restore(this.#addresses.of(string), roots[i]!, weights[i]!);
+      });
+      this.living.restore(cells, strings);
+    }
+    for (let cells = saved.layer; cells < this.#range + this.#h.range; cells++)
+      this.#visited += this.#bound(cells);
+  }
+
+  /** Made when the first layer needs them: wide windows never do. */
+  get #endRows(): EndRows {
+    this.#ends ??= new EndRows(
+      this.#h,
+      this.#table,
+      this.#range,
+      this.#coefficients,
+      this.#addresses,
+      this.#forest,
+      this.#report,
+    );
+    return this.#ends;
+  }
+
+  /** One past the largest packed string of so many cells. */
+  #bound(cells: number): number {
+    return 2 ** (this.#table.cellBits * cells);
+  }
+
+  #stages(m: number): void {
+    const r = this.#h.range;
+    const contents = this.#bound(1);
+    const apart = m >= 2 * r;
+    const windowPairs = 4 ** this.#table.bits;
+    if (this.#bound(m) > HitSet.LARGEST || (apart && windowPairs > MAX_WINDOW_PAIRS)) {
+      for (let visit = 0; visit < 2; visit++) this.#scatter(m);
+      return;
+    }
+    const all = EndPairs.all(contents);
+    const none = EndPairs.none(contents);
+    if (m > this.#range || !apart) {
+      const hits = apart && m === this.#range + r - 1 ? undefined : new HitSet(this.#bound(m));
+      if (hits !== undefined) this.#mark(m, apart ? m : Math.max(1, m - r + 1), none, hits);
+      if (apart) this.#endRows.sweep({ range: m, hits, ready: all, crowded: none });
+      if (hits !== undefined) this.#gatherHits(m, hits, all);
+      return;
+    }
+    const hits = new HitSet(this.#bound(m));
+    const lastUnit = this.#bound(m - 1);
+    const crowd = this.#bound(m - 2) / 2 ** this.#addresses.sector.grading.bits / CROWDED_SHARE;
+    for (let pending = all; !pending.isEmpty(); ) {
+      const counts = new EndCounts(contents);
+      for (const string of this.living.of(m))
+        counts.add(string & (contents - 1), Math.floor(string / lastUnit));
+      let crowded = counts.above(crowd);
+      let ready = pending.without(crowded);
+      if (ready.isEmpty()) {
+        // Nothing thins out any more: every living string is marked, whatever it costs.
+        ready = pending;
+        crowded = none;
+      }
+      hits.clear();
+      this.#mark(m, m, crowded, hits);
+      this.#endRows.sweep({ range: m, hits, ready, crowded });
+      this.#gatherHits(m, hits, ready);
+      pending = pending.without(ready);
+    }
+  }
+
+  /** Marks every output of range m that a living string of range ≥ `from` reaches; of range m itself, only those not crowded. */
+  #mark(m: number, from: number, crowded: EndPairs, hits: HitSet): void {
+    const near = this.#near;
+    const low = this.#bound(m - 1);
+    const high = this.#bound(m);
+    const cellMask = this.#bound(1) - 1;
+    for (let cells = from; cells <= Math.min(this.#range, m + this.#h.range - 1); cells++) {
+      const strings = this.living.of(cells);
+      for (let at = 0; at < strings.length; at++) {
+        if ((at & 0x3fff) === 0) this.#report();
+        const string = strings[at]!;
+        if (cells === m && crowded.has(string & cellMask, Math.floor(string / low))) continue;
+        near.visit(string, cells);
+        for (let i = 0; i < near.count; i++) {
+          const output = near.images[i]!;
+          if (output >= low && output < high) hits.add(output);
+        }
+      }
+    }
+  }
+
+  /**
+   * Outputs of range m that living strings reach, one string after the other, with no list of them: for long interactions in wide
+   * cells, whose outputs outnumber the candidates by far. An output is gathered again for each string that is still alive then.
+   */
+  #scatter(m: number): void {
+    const { link, zero } = this.#forest;
+    const reach = this.#h.range - 1;
+    const low = this.#bound(m - 1);
+    const high = this.#bound(m);
+    const outputs: number[] = [];
+    for (let cells = Math.max(1, m - reach); cells <= Math.min(this.#range, m + reach); cells++) {
+      const strings = this.living.of(cells);
+      for (let at = 0; at < strings.length; at++) {
+        if ((at & 0x3ff) === 0) this.#report();
+        const element = this.#addresses.of(strings[at]!);
+        if (link[element] === zero) continue;
+        this.#near.visit(strings[at]!, cells);
+        outputs.length = 0;
+        for (let i = 0; i < this.#near.count; i++) {
+          const output = this.#near.images[i]!;
+          if (output >= low && output < high) outputs.push(output);
+        }
+        for (let i = 0; i < outputs.length && link[element] !== zero; i++) this.#gather(outputs[i]!, m);
+      }
+    }
+  }
+
+  #gatherHits(m: number, hits: HitSet, ready: EndPairs): void {
+    const cellMask = this.#bound(1) - 1;
+    const lastUnit = this.#bound(m - 1);
+    for (let visit = 0, seen = 0; visit < 2; visit++)
+      hits.forEach((output) => {
+        if (!ready.has(output & cellMask, Math.floor(output / lastUnit))) return;
+        this.#gather(output, m);
+        if ((++seen & 0x3fff) === 0) this.#report();
+      });
+  }
+
+  /** One equation in full. */
+  #gather(output: number, m: number): void {
+    const near = this.#near;
+    const row = this.#row;
+    const { backward } = this.#table;
+    const limit = this.#bound(this.#range);
+    near.visit(output, m);
+    row.clear();
+    for (let i = 0; i < near.count; i++) {
+      const parent = near.images[i]!;
+      if (parent >= limit) continue;
+      if (!row.add(this.#addresses.of(parent), this.#coefficients[backward[near.entries[i]!]!]!)) return;
+    }
+    row.use();
+  }
 }

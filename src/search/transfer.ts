@@ -1,10 +1,10 @@
 /** Models and results as plain values that cross a thread boundary by structured cloning, and back. */
 import { Operator } from '../algebra/operator.ts';
-import type { Rational } from '../algebra/rational.ts';
 import type { Word } from '../algebra/word.ts';
 import { Chain } from '../lattice/chain.ts';
 import { type Hamiltonian, hamiltonianOf } from '../model/hamiltonian.ts';
-import { type Charge, resultFrom, type SearchResult } from './result.ts';
+import type { Charge } from './result.ts';
+import type { SectorCharges } from './search.ts';
 
 /** An operator without its class. */
 export interface PlainOperator {
@@ -17,9 +17,8 @@ export interface PlainModel {
   readonly density: PlainOperator;
 }
 
-export interface PlainResult extends Omit<SearchResult, 'hamiltonian' | 'charges' | 'expansionOfH'> {
+export interface PlainPart extends Omit<SectorCharges, 'charges'> {
   readonly charges: readonly (Omit<Charge, 'density'> & { readonly density: PlainOperator })[];
-  readonly expansionOfH: readonly Rational[] | null;
 }
 
 function plain({ numerators, denominator }: Operator): PlainOperator {
@@ -38,15 +37,10 @@ export function modelOf({ cell, density }: PlainModel): Hamiltonian {
   return hamiltonianOf(new Chain(cell), operator(density));
 }
 
-export function plainResult({ hamiltonian: _, ...result }: SearchResult): PlainResult {
-  return { ...result, charges: result.charges.map((q) => ({ ...q, density: plain(q.density) })) };
+export function plainPart({ charges, primes }: SectorCharges): PlainPart {
+  return { primes, charges: charges.map((q) => ({ ...q, density: plain(q.density) })) };
 }
 
-/** @param hamiltonian the model that was searched */
-export function resultOf(hamiltonian: Hamiltonian, data: PlainResult): SearchResult {
-  return resultFrom({
-    ...data,
-    hamiltonian,
-    charges: data.charges.map((q) => ({ ...q, density: operator(q.density) })),
-  });
+export function partOf({ charges, primes }: PlainPart): SectorCharges {
+  return { primes, charges: charges.map((q) => ({ ...q, density: operator(q.density) })) };
 }

@@ -81,7 +81,8 @@ export class Neighbourhood {
     longest: number,
   ) {
     this.#reach = table.bits / table.cellBits;
-    if (table.cellBits * (longest + 2 * this.#reach) > 52)
+    // A string, moved to leave room on its left; no product is longer.
+    if (table.cellBits * (longest + this.#reach - 1) > 53)
       throw new LimitError(
         `search: strings of ${longest} cells with an interaction of ${this.#reach} cells are too long to pack`,
       );

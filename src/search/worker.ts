@@ -7,12 +7,15 @@ import { checkpointIn } from './checkpoint.ts';
 import type { LatticeResult } from './lattice/result.ts';
 import { type LatticeOptions, type LatticeProgress, searchLatticeNow } from './lattice/search.ts';
 import type { Method } from './result.ts';
-import { searchNow } from './search.ts';
+import { searchSector } from './search.ts';
+import type { Sector } from './sectors.ts';
 import type { Progress } from './sweep.ts';
-import { modelOf, type PlainModel, type PlainResult, plainResult } from './transfer.ts';
+import { modelOf, type PlainModel, type PlainPart, plainPart } from './transfer.ts';
 
+/** One sector of a search. */
 export interface Task {
   readonly model: PlainModel;
+  readonly sector: Sector;
   readonly range: number;
   readonly method: Method;
   readonly primesBelow?: number;
@@ -46,7 +49,7 @@ const port = parentPort;
 if (port !== null) {
   const task = workerData as Task | LatticeTask;
   let last = performance.now();
-  const answer = (message: Answer<Progress | LatticeProgress, PlainResult | LatticeResult>) =>
+  const answer = (message: Answer<Progress | LatticeProgress, PlainPart | LatticeResult>) =>
     port.postMessage(message);
   const onProgress = (progress: Progress | LatticeProgress) => {
     const now = performance.now();
@@ -60,13 +63,15 @@ if (port !== null) {
       const model = { ...task.lattice, lattice: new Lattice(cell, extents) };
       answer({ kind: 'result', result: searchLatticeNow(model, { ...task.options, onProgress }) });
     } else {
-      const { model, checkpoint, ...options } = task;
-      const result = searchNow(modelOf(model), {
+      const { model, checkpoint, sector, ...options } = task;
+      const part = searchSector(modelOf(model), sector, {
         ...options,
-        ...(checkpoint === undefined ? {} : { store: checkpointIn(checkpoint, model, options.range) }),
+        ...(checkpoint === undefined
+          ? {}
+          : { store: (s: Sector) => checkpointIn(checkpoint, model, options.range, s) }),
         onProgress,
       });
-      answer({ kind: 'result', result: plainResult(result) });
+      answer({ kind: 'result', result: plainPart(part) });
     }
   } catch (error) {
     if (!(error instanceof HoldfastError) && !(error instanceof RangeError)) throw error;

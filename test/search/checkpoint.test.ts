@@ -30,11 +30,14 @@ test('a search can go on from every layer', () => {
     const saved: Snapshot[] = [];
     const whole = searchNow(h, {
       range: 7,
-      store: { load: () => undefined, save: (_, snapshot) => void saved.push(structuredClone(snapshot)) },
+      store: () => ({
+        load: () => undefined,
+        save: (_, snapshot) => void saved.push(structuredClone(snapshot)),
+      }),
     });
     expect(saved.length).toBeGreaterThan(2);
     for (const snapshot of saved) {
-      const resumed = searchNow(h, { range: 7, store: { load: () => snapshot, save: () => {} } });
+      const resumed = searchNow(h, { range: 7, store: () => ({ load: () => snapshot, save: () => {} }) });
       expect(charges(resumed)).toEqual(charges(whole));
     }
   }

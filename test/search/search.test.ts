@@ -182,7 +182,7 @@ describe('limits, progress, cancel', () => {
   });
 
   test('a range beyond the packed form is refused before anything is allocated', () => {
-    expect(() => searchNow(parseModel('XX'), { range: 16, method: 'exhaustive' })).toThrow(LimitError);
+    expect(() => searchNow(parseModel('XX'), { range: 17, method: 'exhaustive' })).toThrow(LimitError);
     expect(() => searchNow(parseModel('XX', { cell: 3 }), { range: 6 })).toThrow(/injective/);
   });
 

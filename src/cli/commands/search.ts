@@ -44,6 +44,8 @@ Search:
   --growth              follow the strings that stay alive instead of visiting every candidate: for injective
                         nearest-neighbour interactions; taken by itself above 15 spins
   --checkpoint DIR      keeps finished layers there; the same search, started again, goes on from the last one
+  --threads N           conserved sectors searched at the same time (default: the processors, from 13 spins on)
+  --sectors N           cut the search into up to N sectors, 1 to 8: each needs that much less memory
   --memory GB           refuse to start above so many gigabytes (default: what is free)
 
 ${LATTICE_HELP}
@@ -64,6 +66,8 @@ Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
     certificate: { type: 'string' },
     growth: { type: 'boolean' },
     checkpoint: { type: 'string' },
+    threads: { type: 'string' },
+    sectors: { type: 'string' },
     memory: { type: 'string' },
     unfold: { type: 'boolean' },
     latex: { type: 'boolean' },
@@ -81,6 +85,8 @@ Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
     const method = methodFor(model, range, input.values['growth'] === true ? 'growth' : undefined);
     if (certificate !== undefined) assertCertifiable(model, range, method);
     const checkpoint = input.values['checkpoint'] as string | undefined;
+    const threads = countOption(input, 'threads');
+    const sectors = countOption(input, 'sectors');
     const line = progressLine(input);
     const result = await searchInBackground(model, {
       range,
@@ -89,6 +95,8 @@ Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
       ...(memory === undefined ? {} : { memory }),
       ...(input.values['growth'] === true ? { method: 'growth' as const } : {}),
       ...(checkpoint === undefined ? {} : { checkpoint }),
+      ...(threads === undefined ? {} : { threads }),
+      ...(sectors === undefined ? {} : { sectors }),
     }).finally(line.clear);
     // The answer first: a file that cannot be written then loses nothing.
     input.out(printed(result, input));
@@ -112,7 +120,7 @@ Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
 };
 
 /** What the chain's search has and this one does not write. */
-const CHAIN_ONLY = ['certificate', 'checkpoint', 'latex', 'report', 'picture'] as const;
+const CHAIN_ONLY = ['certificate', 'checkpoint', 'threads', 'sectors', 'latex', 'report', 'picture'] as const;
 
 async function runOnLattice(input: CommandInput): Promise<number> {
   for (const name of CHAIN_ONLY)
@@ -191,6 +199,14 @@ export function rangeOption({ values }: Pick<CommandInput, 'values'>): number {
       'a whole number of cells, 1 or more',
       text === undefined ? 'no range' : show(text),
     );
+  return Number(text);
+}
+
+function countOption({ values }: Pick<CommandInput, 'values'>, name: string): number | undefined {
+  const text = values[name];
+  if (text === undefined) return undefined;
+  if (typeof text !== 'string' || !/^[1-9]\d{0,2}$/.test(text))
+    throw new InputError(`--${name}`, 'a whole number, 1 or more', show(text));
   return Number(text);
 }
 

@@ -4,7 +4,7 @@ import { HoldfastError, InputError, show } from '../../errors.ts';
 import { CATALOGUE } from '../../model/catalogue/index.ts';
 import { parseModel } from '../../model/formula.ts';
 import { estimate } from '../../search/estimate.ts';
-import { methodFor } from '../../search/search.ts';
+import { methodFor } from '../../search/plan.ts';
 import { grouped } from '../verdict.ts';
 import type { Files, Reply, Request, SearchRequest } from './messages.ts';
 
