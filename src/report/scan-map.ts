@@ -39,10 +39,10 @@ interface Mark {
   readonly pattern: number;
 }
 
-/** The map, or null where the plan has more than two parameters. */
+/** The map, or null where the plan has none, or more than two parameters. */
 export function scanMap(results: ScanResults): string | null {
   const { plan } = results;
-  if (plan.parameters.length > 2) return null;
+  if (plan.parameters.length === 0 || plan.parameters.length > 2) return null;
   const marks = marksOf(results);
   const markOf = (point: number): number => {
     const label = labelOf(results.collected.outcomes.get(point));

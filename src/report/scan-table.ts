@@ -110,6 +110,7 @@ export function labelOf(outcome: Outcome | undefined): string {
   if (outcome.status === 'failed') return 'failed';
   const { answer } = outcome;
   if (answer.kind === 'search') return newByRange(answer.dimensionByRange).join(' ');
+  if (answer.kind === 'sector') return 'one sector';
   if (answer.kind === 'residual') {
     if (answer.conserved) return 'conserved';
     if (answer.correctionRange === undefined) return 'not conserved';
@@ -167,6 +168,8 @@ function cellsOf(answer: PointAnswer): string[] {
         String(answer.dimensionByRange.at(-1)),
         String(answer.minimumCells),
       ];
+    case 'sector':
+      return [];
     case 'decide':
       return [
         answer.verdict,

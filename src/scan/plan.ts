@@ -53,6 +53,8 @@ const task = z.discriminatedUnion('kind', [
     kind: z.literal('search'),
     range,
     charges: z.boolean().default(false),
+    // Conserved sectors that are searched apart, each a part of its own.
+    sectors: z.union([z.literal(1), z.literal(2), z.literal(4), z.literal(8)]).default(1),
     certificates: z.boolean().default(false),
   }),
   z.strictObject({
@@ -74,23 +76,25 @@ const pointsPlan = z.strictObject({
   name: z.string().min(1).max(200).regex(LINE, 'expected one line of text').nullish(),
   note: z.string().max(10_000).regex(LINES, 'expected text').optional(),
   model: z.looseObject({}),
-  parameters: z.array(axis).min(1).max(MAX_PARAMETERS),
-  points: z.union(
-    [
-      z.literal('grid'),
-      z.strictObject({
-        list: z.array(z.array(number)).min(1).max(MAX_POINTS).optional(),
-        sample: z.int().min(1).max(MAX_POINTS).optional(),
-        seed: z.int().min(0).optional(),
-      }),
-    ],
-    {
-      error: ({ input }) =>
-        typeof input === 'object' && input !== null
-          ? undefined
-          : 'expected "grid", {"list": …} or {"sample": …, "seed": …}',
-    },
-  ),
+  parameters: z.array(axis).max(MAX_PARAMETERS).default([]),
+  points: z
+    .union(
+      [
+        z.literal('grid'),
+        z.strictObject({
+          list: z.array(z.array(number)).min(1).max(MAX_POINTS).optional(),
+          sample: z.int().min(1).max(MAX_POINTS).optional(),
+          seed: z.int().min(0).optional(),
+        }),
+      ],
+      {
+        error: ({ input }) =>
+          typeof input === 'object' && input !== null
+            ? undefined
+            : 'expected "grid", {"list": …} or {"sample": …, "seed": …}',
+      },
+    )
+    .default('grid'),
   task,
   confirm: z.int().min(1).max(MAX_POINTS).optional(),
 });

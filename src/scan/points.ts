@@ -32,6 +32,22 @@ export function pointsIn({ parameters, points }: Pick<PointsPlan, 'parameters' |
   return { count: drawn.length, at: (point) => onGrid(axes, drawn[point]!) };
 }
 
+/** Parts of each point that are done apart. */
+export function sectorsIn({ task }: Pick<PointsPlan, 'task'>): number {
+  return task.kind === 'search' ? task.sectors : 1;
+}
+
+/** What a plan has to do, part by part: its points, or every sector of each, the number of the sector behind the values. */
+export function partsIn(plan: PointsPlan): Points {
+  const points = pointsIn(plan);
+  const sectors = sectorsIn(plan);
+  if (sectors === 1) return points;
+  return {
+    count: points.count * sectors,
+    at: (part) => [...points.at(Math.floor(part / sectors)), String((part % sectors) + 1)],
+  };
+}
+
 /** The number of points that the axes span, which may be far above what can be listed. */
 export function gridSize(axes: readonly ScanAxis[]): bigint {
   return axes.reduce(

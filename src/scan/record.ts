@@ -15,20 +15,26 @@ const dimensions = z.array(count).min(1);
 const sha = z.string().regex(/^sha256:[0-9a-f]{64}$/);
 const reason = z.string();
 
+const charges = z.array(
+  z.strictObject({
+    range: count,
+    parity: z.enum(['even', 'odd']).nullable(),
+    terms: z.array(z.tuple([z.string().regex(/^[IXYZ]+$/), rationalText])),
+  }),
+);
+
 const answer = z.discriminatedUnion('kind', [
   z.strictObject({
     kind: z.literal('search'),
     dimensionByRange: dimensions,
     minimumCells: count,
-    charges: z
-      .array(
-        z.strictObject({
-          range: count,
-          parity: z.enum(['even', 'odd']).nullable(),
-          terms: z.array(z.tuple([z.string().regex(/^[IXYZ]+$/), rationalText])),
-        }),
-      )
-      .optional(),
+    charges: charges.optional(),
+  }),
+  /** One conserved sector of a search. */
+  z.strictObject({
+    kind: z.literal('sector'),
+    primes: z.array(count),
+    charges,
   }),
   z.strictObject({
     kind: z.literal('decide'),

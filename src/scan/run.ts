@@ -10,13 +10,15 @@ import { parseSyntax } from '../model/syntax.ts';
 import { innerProduct } from '../physics/inner-product.ts';
 import { correctionBytes, nearestCharge, residual, smallestCorrection } from '../physics/residual.ts';
 import { estimate } from '../search/estimate.ts';
-import { methodFor } from '../search/plan.ts';
-import type { SearchResult } from '../search/result.ts';
-import { searchNow } from '../search/search.ts';
+import { methodFor, planOf } from '../search/plan.ts';
+import type { Charge, SearchResult } from '../search/result.ts';
+import { searchNow, searchSector } from '../search/search.ts';
+import { type Grading, type Sector, sectorsOf } from '../search/sectors.ts';
+import type { Progress, SnapshotStore } from '../search/sweep.ts';
 import { everyRangeCertificate } from '../theory/certificate.ts';
 import { decide } from '../theory/decide.ts';
 import { type PointsPlan, type ScanTask, sha256 } from './plan.ts';
-import type { Points } from './points.ts';
+import { type Points, sectorsIn } from './points.ts';
 import type { CertificateNote, Outcome, PointAnswer } from './record.ts';
 
 /** An outcome, and the text of the certificate that it names. */
@@ -48,9 +50,10 @@ export async function runPoint(
   plan: PointsPlan,
   values: readonly string[],
   onProgress: (done: number) => void = () => {},
+  storeFor?: StoreFor,
 ): Promise<PointResult> {
   try {
-    const { answer, certificate } = answerAt(plan, values, onProgress);
+    const { answer, certificate } = answerAt(plan, values, onProgress, storeFor);
     if (certificate === null) return { outcome: { status: 'done', answer }, certificate: null };
     if ('none' in certificate) return { outcome: { status: 'done', answer, certificate }, certificate: null };
     const { text } = certificate;
@@ -72,12 +75,45 @@ interface Answered {
   readonly certificate: { readonly text: string } | { readonly none: string } | null;
 }
 
-function answerAt(plan: PointsPlan, values: readonly string[], onProgress: (done: number) => void): Answered {
+/** The sectors of a task at a point: at most as many as it names, or more where the arrays need them. */
+export function sectorGrading(
+  h: Hamiltonian,
+  { range, sectors }: Extract<ScanTask, { kind: 'search' }>,
+): Grading {
+  return planOf(h, { range, method: 'exhaustive', sectors }).sectors[0]!.grading;
+}
+
+/** Checkpoints of a search. */
+export type StoreFor = (h: Hamiltonian, range: number) => (sector: Sector) => SnapshotStore;
+
+function answerAt(
+  plan: PointsPlan,
+  values: readonly string[],
+  onProgress: (done: number) => void,
+  storeFor: StoreFor | undefined,
+): Answered {
   const h = hamiltonianAt(plan, values);
   const { task } = plan;
   switch (task.kind) {
     case 'search': {
-      const result = searchNow(h, { range: task.range, onProgress: ({ done }) => onProgress(done) });
+      const options = {
+        range: task.range,
+        onProgress: ({ done }: Progress) => onProgress(done),
+        ...(storeFor === undefined ? {} : { store: storeFor(h, task.range) }),
+      };
+      if (task.sectors > 1) {
+        const sector = sectorsOf(sectorGrading(h, task))[Number(values.at(-1)) - 1];
+        // A model with fewer sectors leaves the last parts of its point empty.
+        const part =
+          sector === undefined
+            ? { charges: [], primes: [] }
+            : searchSector(h, sector, { ...options, method: 'exhaustive' });
+        return {
+          answer: { kind: 'sector', primes: [...part.primes], charges: written(h, part.charges) },
+          certificate: null,
+        };
+      }
+      const result = searchNow(h, options);
       return {
         answer: searchAnswer(result, task.charges),
         certificate: task.certificates ? certified(() => certificateNow(result)) : null,
@@ -103,22 +139,22 @@ function certified(write: () => string): { text: string } | { none: string } {
   }
 }
 
-function searchAnswer(result: SearchResult, withCharges: boolean): PointAnswer {
+export function searchAnswer(result: SearchResult, withCharges: boolean): PointAnswer {
   const { hamiltonian, dimensionByRange, minimumCells, charges } = result;
   return {
     kind: 'search',
     dimensionByRange: [...dimensionByRange],
     minimumCells,
-    ...(withCharges
-      ? {
-          charges: charges.map(({ range, parity, density }) => ({
-            range,
-            parity,
-            terms: terms(hamiltonian.chain, density) as [string, string][],
-          })),
-        }
-      : {}),
+    ...(withCharges ? { charges: written(hamiltonian, charges) } : {}),
   };
+}
+
+function written(h: Hamiltonian, charges: readonly Charge[]) {
+  return charges.map(({ range, parity, density }) => ({
+    range,
+    parity,
+    terms: terms(h.chain, density) as [string, string][],
+  }));
 }
 
 function decideAnswer(
@@ -218,7 +254,7 @@ export function estimatePlan(plan: PointsPlan, points: Points): PlanEstimate {
       continue;
     }
     if (task.kind === 'search' && task.certificates) assertCertifiable(h, task.range);
-    const need = task.range === null ? { bytes: 0, seconds: 0 } : needOf(h, task.range);
+    const need = task.range === null ? { bytes: 0, seconds: 0 } : needOf(h, task.range, sectorsIn(plan));
     const correction =
       task.kind === 'residual' && task.range !== null ? correctionBytes(plan.model.cell, task.range) : 0;
     const certificates = task.kind === 'search' && task.certificates ? 2 : 1;
@@ -235,6 +271,14 @@ export function estimatePlan(plan: PointsPlan, points: Points): PlanEstimate {
 /** What growth needs follows the answer, which nobody knows beforehand: a guess. */
 const GROWTH = { bytes: 500e6, seconds: 10 };
 
-function needOf(h: Hamiltonian, range: number): { readonly bytes: number; readonly seconds: number } {
-  return methodFor(h, range) === 'growth' ? GROWTH : estimate(h, range);
+/** Of one part. */
+function needOf(
+  h: Hamiltonian,
+  range: number,
+  sectors: number,
+): { readonly bytes: number; readonly seconds: number } {
+  if (sectors === 1 && methodFor(h, range) === 'growth') return GROWTH;
+  const all = planOf(h, { range, method: 'exhaustive', sectors }).sectors.length;
+  const { bytes, seconds } = estimate(h, range, { together: 1, all });
+  return { bytes, seconds: seconds / all };
 }

@@ -28,7 +28,7 @@ describe('the canonical plan', () => {
         { name: 'h', values: ['0', '1/2', '1'] },
       ],
       points: 'grid',
-      task: { kind: 'search', range: 4, charges: false, certificates: false },
+      task: { kind: 'search', range: 4, charges: false, certificates: false, sectors: 1 },
       confirm: 15,
     });
     expect(readPlan(text).text).toBe(text);

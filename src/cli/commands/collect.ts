@@ -12,9 +12,11 @@ import {
 } from '../../report/scan-table.ts';
 import { wrap } from '../../report/text.ts';
 import { mergeRecords } from '../../scan/merge.ts';
+import { sectorsIn } from '../../scan/points.ts';
+import { combineSectors } from '../../scan/sectors.ts';
 import { WHOLE_PLAN } from '../../scan/shard.ts';
 import { type Command, type CommandInput, Exit } from '../command.ts';
-import { writeFileWhole } from '../output-file.ts';
+import { giveWay, writeFileWhole } from '../output-file.ts';
 import { shareLine } from '../progress.ts';
 import { ResultsFolder } from '../scan/folder.ts';
 import type { Job } from '../scan/jobs.ts';
@@ -54,14 +56,15 @@ Exit status: 0 every point is done and every certificate accepted, 1 something i
     const folder = await ResultsFolder.existing(path);
     const files = await folder.files(WHOLE_PLAN);
     const own = files.filter(({ file }) => file.plan === folder.hash);
-    const collected = mergeRecords(
+    const parts = mergeRecords(
       folder.points,
       own.flatMap(({ file }) => file.records),
     );
+    const collected = await combinedPoints(input, folder, parts);
     const unchecked = input.values['unchecked'] === true;
     const { rejected, accepted } = unchecked
       ? { rejected: new Map<number, string>(), accepted: 0 }
-      : await checked(input, folder, collected.outcomes, workers);
+      : await checked(input, folder, collected, workers);
     const results: ScanResults = { plan: folder.read.plan, hash: folder.hash, collected, rejected };
     const map = scanMap(results);
     const write = (name: string, parts: Iterable<string>) =>
@@ -79,13 +82,34 @@ Exit status: 0 every point is done and every certificate accepted, 1 something i
   },
 };
 
+/** Where a plan has its sectors searched apart: the points that they make, with certificates written here. */
+async function combinedPoints(
+  input: CommandInput,
+  folder: ResultsFolder,
+  parts: ScanResults['collected'],
+): Promise<ScanResults['collected']> {
+  const { plan } = folder.read;
+  if (sectorsIn(plan) === 1) return parts;
+  const line = shareLine(input, 'putting sectors together');
+  try {
+    const { collected, certificates } = await combineSectors(plan, parts, async (done) => {
+      line.show(done);
+      await giveWay('collect', input.signal);
+    });
+    for (const [point, text] of certificates) await folder.writeCertificate(point, text);
+    return collected;
+  } finally {
+    line.clear();
+  }
+}
+
 type Files = Awaited<ReturnType<ResultsFolder['files']>>;
 
 /** Every certificate that a record names, in threads: its fault, by point. */
 async function checked(
   input: CommandInput,
   folder: ResultsFolder,
-  outcomes: ScanResults['collected']['outcomes'],
+  { outcomes, points }: ScanResults['collected'],
   workers: number,
 ): Promise<{ rejected: Map<number, string>; accepted: number }> {
   const jobs: Job[] = [...outcomes]
@@ -96,7 +120,7 @@ async function checked(
     .map(([point, outcome]) => ({
       kind: 'check',
       point,
-      values: folder.points.at(point),
+      values: points.at(point),
       outcome,
       certificate: folder.certificatePath(point),
     }));

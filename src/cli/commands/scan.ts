@@ -4,7 +4,7 @@ import { availableParallelism } from 'node:os';
 import { basename, dirname, join, resolve } from 'node:path';
 import { CancelledError, HoldfastError, InputError, LimitError, show } from '../../errors.ts';
 import { type ReadPlan, readPlan } from '../../scan/plan.ts';
-import { pointsIn } from '../../scan/points.ts';
+import { partsIn, pointsIn, sectorsIn } from '../../scan/points.ts';
 import { estimatePlan, type PlanEstimate } from '../../scan/run.ts';
 import { pointsOfShard, type Shard, textFromShard, WHOLE_PLAN } from '../../scan/shard.ts';
 import { freeMemory } from '../../search/thread.ts';
@@ -122,7 +122,7 @@ async function runHere(
 function summary(report: ShardReport, folder: ResultsFolder, shard: Shard): string {
   const { total, before, done, failed, refused } = report;
   const parts = [
-    `${before + done - failed} of ${total} points done${before > 0 ? `, ${before} of them before` : ''}`,
+    `${before + done - failed} of ${total} ${sectorsIn(folder.read.plan) > 1 ? 'parts' : 'points'} done${before > 0 ? `, ${before} of them before` : ''}`,
     ...(refused > 0 ? [`${refused} without a Hamiltonian`] : []),
     ...(failed > 0 ? [`${failed} failed and are tried again next time`] : []),
   ];
@@ -182,7 +182,7 @@ async function submit(
   path: string,
   need: PlanEstimate,
 ): Promise<number> {
-  const points = pointsIn(read.plan);
+  const points = partsIn(read.plan);
   const workers = wholeOption(input, 'workers') ?? 1;
   const guess = Math.ceil((points.count * need.seconds) / workers / TASK_SECONDS);
   const tasks = wholeOption(input, 'tasks') ?? Math.max(1, Math.min(MAX_TASKS, points.count, guess));

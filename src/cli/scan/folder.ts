@@ -4,6 +4,7 @@
  *     plan.json                     the canonical plan, written first; every other file belongs to it
  *     records/3-of-20.1.jsonl       finished points of shard 3 of 20, one file a process; only ever appended to
  *     certificates/000017.json      the certificate of point 17, if the plan asks for them
+ *     checkpoints/17/               finished layers of a long search that is under way
  *
  * Nobody appends to the file of another process, so two copies of a shard cannot mix their lines, and the unfinished last line of one that
  * was killed stays the last. Whoever starts reads which points are done from all files that can hold points of its shard.
@@ -15,7 +16,7 @@ import { basename, join } from 'node:path';
 import { HoldfastError, InputError, show } from '../../errors.ts';
 import { isFinal, mergeRecords } from '../../scan/merge.ts';
 import { planHash, type ReadPlan, readPlan } from '../../scan/plan.ts';
-import { type Points, pointsIn } from '../../scan/points.ts';
+import { type Points, partsIn } from '../../scan/points.ts';
 import {
   headerLine,
   type PointRecord,
@@ -29,9 +30,11 @@ import { writeFileWhole } from '../output-file.ts';
 const PLAN = 'plan.json';
 const RECORDS = 'records';
 const CERTIFICATES = 'certificates';
+const CHECKPOINTS = 'checkpoints';
 const RECORD_FILE = /^([1-9]\d*)-of-([1-9]\d*)\.([1-9]\d*)\.jsonl$/;
 
 export class ResultsFolder {
+  /** What is to be done, and recorded one by one: points, or sectors of points. */
   readonly points: Points;
 
   private constructor(
@@ -40,7 +43,7 @@ export class ResultsFolder {
     /** `sha256:` and the digest of the canonical plan. */
     readonly hash: string,
   ) {
-    this.points = pointsIn(read.plan);
+    this.points = partsIn(read.plan);
   }
 
   /**
@@ -97,6 +100,16 @@ export class ResultsFolder {
 
   certificatePath(point: number): string {
     return join(this.path, CERTIFICATES, `${String(point + 1).padStart(6, '0')}.json`);
+  }
+
+  /** Where a long search keeps its finished layers while it runs. */
+  checkpointPath(point: number): string {
+    return join(this.path, CHECKPOINTS, String(point + 1));
+  }
+
+  /** The search is over and recorded. */
+  async dropCheckpoint(point: number): Promise<void> {
+    await rm(this.checkpointPath(point), { recursive: true, force: true });
   }
 
   async writeCertificate(point: number, text: string): Promise<void> {

@@ -5,7 +5,13 @@ import type { PointResult } from '../../scan/run.ts';
 
 /** Points count from 0. `certificate` is the file to check against the outcome recorded. */
 export type Job =
-  | { readonly kind: 'run'; readonly point: number; readonly values: readonly string[] }
+  | {
+      readonly kind: 'run';
+      readonly point: number;
+      readonly values: readonly string[];
+      /** A folder for finished layers. */
+      readonly checkpoint: string;
+    }
   | {
       readonly kind: 'check';
       readonly point: number;

@@ -34,7 +34,13 @@ export async function runShard(
   const writer = folder.writer(shard);
   function* jobs(): Generator<Job> {
     for (const point of pointsOfShard(shard, points.count))
-      if (!finished.has(point)) yield { kind: 'run', point, values: points.at(point) };
+      if (!finished.has(point))
+        yield {
+          kind: 'run',
+          point,
+          values: points.at(point),
+          checkpoint: folder.checkpointPath(point),
+        };
   }
   try {
     await runPool(
@@ -47,6 +53,7 @@ export async function runShard(
         // The certificate first: a record says that it is there.
         if (certificate !== null) await folder.writeCertificate(point, certificate);
         await writer.append({ point, at: [...points.at(point)], outcome, milliseconds });
+        if (outcome.status !== 'failed') await folder.dropCheckpoint(point);
         report.done++;
         if (outcome.status !== 'done') report[outcome.status]++;
       },

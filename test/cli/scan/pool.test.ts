@@ -14,14 +14,19 @@ const { plan } = readPlan({
 });
 const points = pointsIn(plan);
 const jobs = (): Job[] =>
-  Array.from({ length: 10 }, (_, point) => ({ kind: 'run', point, values: points.at(point) }));
+  Array.from({ length: 10 }, (_, point) => ({
+    kind: 'run',
+    checkpoint: '',
+    point,
+    values: points.at(point),
+  }));
 const dead = ({ point }: Job, reason: string): Reply => ({ kind: 'check', point, reason });
 
 describe('a pool of threads', () => {
   it('answers every job once, and outlives a thread that dies over one', async () => {
     const work = jobs();
     // Values that no plan can have: the thread ends with an error that nobody catches there.
-    work[4] = { kind: 'run', point: 4, values: null as never };
+    work[4] = { kind: 'run', checkpoint: '', point: 4, values: null as never };
     const replies: Reply[] = [];
     await runPool(plan, work, async (reply) => void replies.push(reply), {
       workers: 2,
