@@ -160,7 +160,7 @@ export async function benchScaling(options: BenchOptions): Promise<void> {
       ];
     }),
     notes: [
-      `Extrapolated: memory by 4 a range from the bytes a string, time by the last column of the table above. Above ${MAX_SPINS} spins the arrays of one process end, so these rows say what an exhaustive search would cost, not what can be started.`,
+      `Extrapolated: memory by 4 a range from the bytes a string, time by the last column of the table above. Above ${MAX_SPINS} spins the arrays of one process end (one more where the model has four conserved sectors), so these rows say what an exhaustive search would cost, not what can be started.`,
     ],
   });
   derived({
