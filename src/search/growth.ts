@@ -4,7 +4,8 @@
  * Write R and A for growth by the bond at the right and left end, and V_m for the densities of range m that R − A kills. Where
  * the interaction is injective, V_m = R^{m−2} V_2 (docs/theory.md, the lifting lemma; it holds over any field in which the
  * interaction is injective, GF(p) included). So the strings of range m of a charge are a vector of V_m, one parameter a basis
- * vector, plus a particular solution of (R − A) x = −D, where D is what longer strings leave on outputs of range m + 1. Outputs
+ * vector, plus a particular solution of (R − A) x = −D, where D is what longer strings leave on outputs of range m + 1. Where no longer
+ * ones are left, m is the range of the charge, and only the vectors of V_m that the pencil allows come in question. Outputs
  * where D vanishes and strings that no such output ties to the rest of it need not be looked at: their part is in V_m.
  *
  * Every string known so far is a combination of the parameters. Layers go down from the longest range; a layer is solved
@@ -18,10 +19,14 @@ import type { Hamiltonian } from '../model/hamiltonian.ts';
 import { cellsOf } from './assemble.ts';
 import { candidateCount } from './estimate.ts';
 import type { OnProgress } from './sweep.ts';
+import { MAX_PENCIL_CELL, TopParts } from './top-parts.ts';
 import { Neighbourhood, type WindowTable, windowTable } from './windows.ts';
 
 /** A combination of the parameters; shorter than their number where the rest is zero. */
 type Combination = readonly number[];
+
+/** Residues by string. */
+type Vector = ReadonlyMap<number, number>;
 
 /** Equation of one output: growth parents with coefficients, and what longer strings leave there. */
 interface Row {
@@ -45,7 +50,7 @@ export function livingByGrowth(
   const table = windowTable(h);
   const coefficients = table.values.map((v) => field.residue(v));
   if (!isInjective(table, coefficients, field)) return undefined;
-  return new Growth(table, coefficients, range, field, onProgress).run();
+  return new Growth(h, table, coefficients, range, field, onProgress).run();
 }
 
 /** Have `a ↦ [a⊗1, h]` and `a ↦ [h, 1⊗a]` no kernel on one-cell operators without a trace, h being the two-cell part? */
@@ -99,6 +104,7 @@ class Growth {
   #constraints: SparseVector[] = [];
 
   constructor(
+    readonly h: Hamiltonian,
     readonly table: WindowTable,
     readonly coefficients: readonly number[],
     readonly range: number,
@@ -112,10 +118,13 @@ class Growth {
     // Ranges 1 and 2 are few and go to the final system whole.
     const short = 2 ** (2 * this.table.cellBits);
     const cellMask = 2 ** this.table.cellBits - 1;
-    const tops = this.#tops();
+    const { shortest, allowed } = this.#topParts();
     for (let m = this.range; m >= 3; m--) {
       this.#solveLayer(m);
-      for (const vector of tops[m]!) {
+      // Below longer strings a particular solution is known, and any vector of V_m may have to make up for its choice.
+      for (const part of this.#parameters === 0 ? allowed[m]! : shortest) {
+        let vector = part;
+        for (let cells = 2; cells < m; cells++) vector = this.#grow(vector, cells);
         const parameter = this.#parameters++;
         for (const [string, value] of vector) this.#add(string, parameter, value);
       }
@@ -127,44 +136,42 @@ class Growth {
     return Float64Array.from(strings);
   }
 
-  /** Bases of V_m by range m = 2 … range. */
-  #tops(): Map<number, number>[][] {
-    const tops: Map<number, number>[][] = [];
-    tops[2] = this.#shortestTop();
-    for (let m = 3; m <= this.range; m++) tops[m] = tops[m - 1]!.map((vector) => this.#grow(vector, m - 1));
-    return tops;
+  /**
+   * A basis of V_2; and for every range m ≥ 3 one of the f in V_2 for which R^{m−2} f can be the part of full range of a charge: those
+   * that the pencil allows, and all where the cell is too wide for it.
+   */
+  #topParts(): { shortest: readonly Vector[]; allowed: readonly (readonly Vector[])[] } {
+    if (this.range < 3) return { shortest: [], allowed: [] };
+    const parts = new TopParts(this.h, this.field);
+    const shortest = parts.shortest.map(
+      (f) => new Map([...f.numerators].map(([word, value]) => [Number(word), Number(value)])),
+    );
+    if (this.h.chain.cell > MAX_PENCIL_CELL)
+      return { shortest, allowed: Array.from({ length: this.range + 1 }, () => shortest) };
+    const steps = parts.allowed(this.range);
+    for (;;) {
+      const step = steps.next();
+      this.#report(this.range);
+      if (step.done)
+        return {
+          shortest,
+          allowed: step.value.map((basis) => basis.map((f) => this.#combined(shortest, f))),
+        };
+    }
   }
 
-  /** V_2: the two-cell densities that R − A kills, from the outputs of range 3. */
-  #shortestTop(): Map<number, number>[] {
-    const { cellBits } = this.table;
-    const strings: number[] = [];
-    const cellMask = 2 ** cellBits - 1;
-    for (let string = 2 ** cellBits; string < 2 ** (2 * cellBits); string++)
-      if ((string & cellMask) !== 0) strings.push(string);
-    const rows = new Map<number, Map<number, number>>();
-    for (const [column, string] of strings.entries()) {
-      this.#near.visit(string, 2);
-      for (let i = 0; i < this.#near.count; i++) {
-        const output = this.#near.images[i]!;
-        if (cellsOf(output, cellBits) !== 3) continue;
-        const row = rows.get(output) ?? new Map<number, number>();
-        rows.set(output, row);
-        const value = this.coefficients[this.table.forward[this.#near.entries[i]!]!]!;
-        row.set(column, ((row.get(column) ?? 0) + value) % this.field.p);
-      }
-    }
-    const sparse = [...rows.values()].map((row) => {
-      const order = [...row].filter(([, v]) => v !== 0).sort((a, b) => a[0] - b[0]);
-      return { columns: order.map(([c]) => c), values: order.map(([, v]) => v) };
+  #combined(vectors: readonly Vector[], { columns, values }: SparseVector): Vector {
+    const { p, multiply } = this.field;
+    const total = new Map<number, number>();
+    columns.forEach((c, i) => {
+      for (const [string, value] of vectors[c]!)
+        total.set(string, ((total.get(string) ?? 0) + multiply(values[i]!, value)) % p);
     });
-    return eliminate(sparse, strings.length, this.field)
-      .nullSpace()
-      .map((v) => new Map(v.columns.map((c, i) => [strings[c]!, v.values[i]!])));
+    return total;
   }
 
   /** R on a density of range m: the bond at the last cell. */
-  #grow(vector: ReadonlyMap<number, number>, m: number): Map<number, number> {
+  #grow(vector: Vector, m: number): Vector {
     const { start, image, forward, cellBits } = this.table;
     const { p, multiply } = this.field;
     const unit = 2 ** (cellBits * (m - 1));

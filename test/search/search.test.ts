@@ -143,19 +143,57 @@ describe('following growth instead of visiting every candidate', () => {
     expect(followed.method).toBe('growth');
   });
 
-  property('agrees on two spins a cell', 12, (random) => {
+  property('agrees on two spins a cell, at several ranges and primes', 14, (random) => {
     const u = random.integer(-3, 3);
     const hopping = [
       'XIXI + YIYI + IXIX + IYIY',
       'XIXI + YIYI + 2 IXIX + 2 IYIY',
       'XIXI + YIYI + ZIZI + IXIX + IYIY + IZIZ',
+      'XIXI + YIYI + IXIX + IYIY + XIYI - YIXI',
     ];
     const rung = random.pick(['ZZ', 'XX + YY + ZZ', 'XX']);
     const h = parseModel(`${random.pick(hopping)} + ${u} (${rung}) + ${random.integer(-1, 1)} ZI`, {
       cell: 2,
     });
-    const exhaustive = searchNow(h, { range: 3, method: 'exhaustive' });
-    expect(bytes(searchNow(h, { range: 3, method: 'growth' }))).toBe(bytes(exhaustive));
+    const range = random.integer(1, 4);
+    const exhaustive = searchNow(h, { range, method: 'exhaustive' });
+    const followed = searchNow(h, { range, method: 'growth', primesBelow: random.pick([2 ** 26, 40_000]) });
+    expect(bytes(followed)).toBe(bytes(exhaustive));
+  });
+
+  property('agrees on chains with many charges, where parts of several ranges meet', 16, (random) => {
+    // Rank 2 and equal couplings: up to four parts of full range, and charges at every range.
+    const a = random.nonZero(3);
+    const formula = random.pick([
+      `${a} (XX + YY) + ${random.integer(-2, 2)} Z + ${random.integer(0, 1)} (XY - YX)`,
+      `${a} (XX + YY + ZZ) + ${random.integer(-1, 1)} Z`,
+      `${a} XX + ${random.nonZero(3)} YY + ${random.integer(-2, 2)} ZZ`,
+      `${a} (XX + YY) + ${random.integer(-2, 2)} (XY + YX) + ${random.integer(-1, 1)} X`,
+    ]);
+    const h = parseModel(formula.replaceAll('+ -', '- '));
+    const range = random.integer(3, 7);
+    const exhaustive = searchNow(h, { range, method: 'exhaustive' });
+    let followed: SearchResult;
+    try {
+      followed = searchNow(h, { range, method: 'growth' });
+    } catch (error) {
+      expect(error).toBeInstanceOf(LimitError);
+      return;
+    }
+    expect(bytes(followed)).toBe(bytes(exhaustive));
+  });
+
+  test.each([
+    ['Ising, rank one', 'ZZ + 2 X + 3 Z', 1],
+    ['range three', 'XX + YY + ZZ + 1/2 XIX', 1],
+    ['one cell', 'X + 2 Z', 1],
+    ['a ladder with one leg coupled', 'XIXI + YIYI + 2 ZZ', 2],
+  ])('does not apply and says so: %s', (_, formula, cell) => {
+    const h = parseModel(formula, { cell });
+    expect(() => searchNow(h, { range: 3, method: 'growth' })).toThrow(
+      /needs an injective nearest-neighbour/,
+    );
+    expect(searchNow(h, { range: 3 }).method).toBe('exhaustive');
   });
 
   test('reaches ranges that no list of candidates does', () => {
