@@ -1,6 +1,7 @@
 /** `npm run bench`: see `USAGE`. Exit status 1 when a run fails or gives an answer that is known to be wrong. */
 import { parseArgs } from 'node:util';
 import { benchExternal } from './external/external.ts';
+import { benchGrowth } from './growth.ts';
 import { benchLattice } from './lattice.ts';
 import { machine } from './measure.ts';
 import { MODELS } from './models.ts';
@@ -13,6 +14,7 @@ const BENCHES: Readonly<
   Record<string, { readonly what: string; run(options: BenchOptions): Promise<void> }>
 > = {
   search: { what: 'the exhaustive search, beside one compiled pass over all non-zeros', run: benchSearch },
+  growth: { what: 'the search that follows growth, for injective chains and ladders', run: benchGrowth },
   lattice: { what: 'other lattices, and the uniform chain through both engines', run: benchLattice },
   scaling: {
     what: 'what larger machines reach: the tables continued to range 18, and the search by growth',
