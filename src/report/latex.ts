@@ -6,6 +6,7 @@ import type { Hamiltonian } from '../model/hamiltonian.ts';
 import type { SearchResult } from '../search/result.ts';
 import { linesOf, type Token, tokensOf, tokenText } from './expression.ts';
 import { groupTerms, wordText } from './grouping.ts';
+import { labelsOf, labelText } from './labels.ts';
 import { addedByRange, CAUTIONS, strings, validityOf, verdictOf } from './verdict.ts';
 
 /** Characters of plain text that fill a line of an article in LaTeX. */
@@ -32,8 +33,10 @@ export function latexResult(result: SearchResult): string {
   const { hamiltonian, charges, range, expansionOfH } = result;
   const { cell } = hamiltonian.chain;
   const example = cell === 1 ? ['XZ', 'X_j Z_{j+1}'] : [`X${'I'.repeat(cell - 1)}`, 'X_{j,1}'];
+  const labels = labelsOf(result);
   const body = charges.flatMap((charge, i) => [
     `\\subsection*{$Q_{${i + 1}}$: range ${charge.range}${charge.parity === null ? '' : `, ${charge.parity}`}, ${strings(charge.density.size)}}`,
+    ...(labels[i] ? [`${latexText(capital(labelText(labels[i])))}.`] : []),
     latexEquation(`Q_{${i + 1}}`, hamiltonian, charge.density),
   ]);
   const expansion = expansionOfH === null ? [] : [`\\[ H = ${combination(expansionOfH)} \\]`];
@@ -54,6 +57,10 @@ export function latexResult(result: SearchResult): string {
     ...CAUTIONS.map((caution) => `\n${latexText(caution)}`),
     '\\end{document}',
   ].join('\n')}\n`;
+}
+
+function capital(text: string): string {
+  return text.charAt(0).toUpperCase() + text.slice(1);
 }
 
 /** Σ c_i Q_i without the zeros. */

@@ -4,6 +4,7 @@ import type { SearchResult } from '../search/result.ts';
 import { citation } from './citation.ts';
 import { groupTerms } from './grouping.ts';
 import { resultToJson } from './json.ts';
+import { labelsOf, labelText } from './labels.ts';
 import { escapeMarkup } from './markup.ts';
 import { mathmlCombination, mathmlEquation, mathmlName } from './mathml.ts';
 import { growthPicture, legendPicture, pictureOfCharge } from './picture.ts';
@@ -112,7 +113,9 @@ function chargeArticle(result: SearchResult, index: number, fold: number): strin
     rest.length === 0
       ? ''
       : `<p class="note">${escapeMarkup(restText(rest))}. All of them are in the JSON below.</p>`;
-  return `<article><h3><math>${mathmlName(name)}</math> range ${charge.range}${parity}, ${strings(charge.density.size)}</h3>
+  const label = labelsOf(result)[index];
+  const owed = label ? `<p>Kind: ${escapeMarkup(labelText(label))}.</p>` : '';
+  return `<article><h3><math>${mathmlName(name)}</math> range ${charge.range}${parity}, ${strings(charge.density.size)}</h3>${owed}
 <div class="equation" role="group" tabindex="0" aria-label="${name} in full">${mathmlEquation(name, result.hamiltonian, shown)}</div>${note}
 <figure>${pictureOfCharge(charge, result, name, fold)}</figure></article>`;
 }

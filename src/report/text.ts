@@ -4,6 +4,7 @@ import type { Hamiltonian } from '../model/hamiltonian.ts';
 import type { Charge, SearchResult } from '../search/result.ts';
 import { linesOf, tokensOf, tokenText } from './expression.ts';
 import { type GroupedDensity, groupTerms, type TermGroup } from './grouping.ts';
+import { labelsOf, labelText } from './labels.ts';
 import {
   addedByRange,
   byLemma,
@@ -35,8 +36,11 @@ export function printResult(result: SearchResult, options: TextOptions = {}): st
   const prose = (line: string, code?: number) =>
     wrap(line, width).map((l) => (code === undefined ? l : style(code, l)));
   const paragraphs = [prose(verdictOf(result), 1).join('\n')];
+  const labels = labelsOf(result);
   result.charges.forEach((charge, i) => {
     const [head, ...body] = printCharge(charge, result.hamiltonian, options).split('\n');
+    const label = labels[i];
+    if (label) body.unshift(...wrap(labelText(label), width - INDENT.length));
     paragraphs.push(
       [`  ${style(1, `Q${i + 1}`)}  ${head}`, ...body.map((line) => `${INDENT}${line}`)].join('\n'),
     );
