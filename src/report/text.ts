@@ -45,10 +45,14 @@ export function printResult(result: SearchResult, options: TextOptions = {}): st
       [`  ${style(1, `Q${i + 1}`)}  ${head}`, ...body.map((line) => `${INDENT}${line}`)].join('\n'),
     );
   });
+  const unlabelled = labels.includes(null);
   const counts = addedByRange(result)
     .map((added, j) => `${j + 1}: ${added}`)
     .join('   ');
   const notes = [
+    ...(unlabelled
+      ? ['The list is too long to say here what each charge owes to symmetries; holdfast algebra says it.']
+      : []),
     expansionText(result),
     `New charges by range  ${counts}   (in all ${result.charges.length})`,
     validityOf(result),

@@ -21,10 +21,11 @@ describe('what a charge owes to symmetries stands beside it', () => {
     expect(reportPage(heisenberg)).toContain('<p>Kind: total spin along Z; spin 1 under SU(2).</p>');
   });
 
-  test('a long list is left without, and nothing is said', () => {
-    const many = searchNow(parseModel('ZZ'), { range: 4 });
+  test('a long list is left without, and it is said where to find them', () => {
+    const many = searchNow(parseModel('ZZ'), { range: 5 });
     expect(many.charges.length).toBeGreaterThan(40);
     expect(labelsOf(many).every((label) => label === null)).toBe(true);
+    expect(printResult(many)).toContain('holdfast algebra');
     expect(printResult(many)).not.toContain('strictly local');
   });
 });
