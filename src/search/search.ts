@@ -103,12 +103,11 @@ export function searchSector(h: Hamiltonian, sector: Sector, options: SearchOpti
       continue;
     }
     const alive = assemble(h, strings, range, solving);
-    const found = modularBasis(alive.matrix, mirrorOf(h, alive.strings), field);
+    const reflected = mirrorOf(h, alive.strings);
+    const found = modularBasis(alive.matrix, reflected, field);
     solving(0.5);
-    const { system, basis } = restricted(alive, found);
-    const lifted = liftCharges(system.matrix, mirrorOf(h, system.strings), { basis, field }, fields, () =>
-      solving(1),
-    );
+    const { system, mirror, basis } = restricted(alive, reflected, found);
+    const lifted = liftCharges(system.matrix, mirror, { basis, field }, fields, () => solving(1));
     if (!lifted.ok) continue;
     return {
       charges: lifted.charges.map((charge) => chargeOf(h, system.strings, charge)),
@@ -176,8 +175,9 @@ export function combined(
 /** The columns that charges use. Later primes need no others, and the exact check sees every equation that meets them. */
 function restricted(
   { matrix, strings }: RestrictedSystem,
+  mirror: Mirror,
   basis: ModularBasis,
-): { system: RestrictedSystem; basis: ModularBasis } {
+): { system: RestrictedSystem; mirror: Mirror; basis: ModularBasis } {
   const keep = new Uint8Array(matrix.columns);
   for (const v of [...basis.even, ...basis.odd]) for (const c of v.columns) keep[c] = 1;
   const { matrix: smaller, columnOf, rowOf } = restrictColumns(matrix, keep);
@@ -188,6 +188,8 @@ function restricted(
   });
   return {
     system: { matrix: smaller, strings: strings.filter((_, c) => keep[c] === 1) },
+    mirror:
+      mirror === null ? null : mirror.filter((_, c) => keep[c] === 1).map((c) => (c < 0 ? -1 : columnOf[c]!)),
     basis: { even: basis.even.map(moved), odd: basis.odd.map(moved), steps },
   };
 }
@@ -230,6 +232,10 @@ function expansion(h: Hamiltonian, charges: readonly Charge[]): readonly Rationa
 
 /** The string of a charge that no other charge of its part has: of full range, first in alphabetical order. */
 export function leadingWord(h: Hamiltonian, charge: Charge): Word {
-  for (const [word] of charge.density.terms()) if (h.chain.range(word) === charge.range) return word;
-  throw new VerificationError('search: a charge without terms');
+  let leading: Word | undefined;
+  for (const word of charge.density.numerators.keys())
+    if (h.chain.range(word) === charge.range && (leading === undefined || compareWords(word, leading) < 0))
+      leading = word;
+  if (leading === undefined) throw new VerificationError('search: a charge without terms');
+  return leading;
 }
