@@ -181,9 +181,14 @@ export {
   textFromShard,
   WHOLE_PLAN,
 } from './scan/shard.ts';
-export { type BackgroundOptions, searchLattice } from './search/background.ts';
+export { type BackgroundOptions, searchAllWaves, searchLattice } from './search/background.ts';
 export { candidateCount, type Estimate, estimate } from './search/estimate.ts';
-export { type AllWaves, allWaves, type ExceptionalWaves } from './search/lattice/all-waves.ts';
+export {
+  type AllWaves,
+  allWaves,
+  type ExceptionalWaves,
+  type WavesProgress,
+} from './search/lattice/all-waves.ts';
 export { type RealDensity, realForms } from './search/lattice/real-form.ts';
 export type { LatticeCharge, LatticeResult } from './search/lattice/result.ts';
 export {

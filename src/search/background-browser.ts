@@ -8,6 +8,7 @@ import type { Hamiltonian } from '../model/hamiltonian.ts';
 import type { LatticeModel } from '../model/lattice-model.ts';
 import type { BackgroundOptions } from './background.ts';
 import { estimate, requireMemory } from './estimate.ts';
+import { type AllWaves, allWaves, assertChain, type WavesProgress } from './lattice/all-waves.ts';
 import type { LatticeResult } from './lattice/result.ts';
 import { estimateLattice, type LatticeOptions, searchLatticeNow } from './lattice/search.ts';
 import { methodFor } from './plan.ts';
@@ -44,6 +45,25 @@ export async function searchLattice(
   requireMemory('the window', estimateLattice(model, rest), memory);
   await turn(signal);
   return searchLatticeNow(model, { ...rest, onProgress: stoppable(onProgress, signal) });
+}
+
+/**
+ * `allWaves`, as `search`.
+ *
+ * @throws as `search`
+ */
+export async function searchAllWaves(
+  model: LatticeModel,
+  range: number,
+  options: Pick<BackgroundOptions, 'signal' | 'memory'> & {
+    readonly onProgress?: (stage: WavesProgress) => void;
+  } = {},
+): Promise<AllWaves> {
+  const { signal, memory = MEMORY, onProgress } = options;
+  assertChain(model);
+  requireMemory('the window', estimateLattice(model, { window: [range] }), memory);
+  await turn(signal);
+  return allWaves(model, range, stoppable(onProgress, signal));
 }
 
 async function turn(signal: AbortSignal | undefined): Promise<void> {

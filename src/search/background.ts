@@ -6,6 +6,7 @@ import { Box } from '../lattice/lattice.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
 import type { LatticeModel } from '../model/lattice-model.ts';
 import { candidateCount, estimate, requireMemory } from './estimate.ts';
+import { type AllWaves, assertChain, type WavesProgress } from './lattice/all-waves.ts';
 import type { LatticeResult } from './lattice/result.ts';
 import { estimateLattice, type LatticeOptions, type LatticeProgress } from './lattice/search.ts';
 import { planOf } from './plan.ts';
@@ -14,7 +15,7 @@ import { combined, latecomers, type SearchOptions, type SectorCharges } from './
 import type { Progress } from './sweep.ts';
 import { freeMemory, threadSource } from './thread.ts';
 import { type PlainPart, partOf, plainModel } from './transfer.ts';
-import type { Answer, LatticeTask, Task } from './worker.ts';
+import type { Answer, LatticeTask, Task, WavesTask } from './worker.ts';
 
 export interface BackgroundOptions extends Omit<SearchOptions, 'store'> {
   readonly signal?: AbortSignal;
@@ -109,9 +110,30 @@ export async function searchLattice(
   return Object.freeze({ ...result, model, box: new Box(box.cell, box.low, box.size) });
 }
 
+/**
+ * `allWaves` in a worker thread.
+ *
+ * @throws as `search`
+ */
+export async function searchAllWaves(
+  model: LatticeModel,
+  range: number,
+  options: Pick<BackgroundOptions, 'signal' | 'memory'> & {
+    readonly onProgress?: (stage: WavesProgress) => void;
+  } = {},
+): Promise<AllWaves> {
+  const { signal, memory = freeMemory(), onProgress } = options;
+  assertChain(model);
+  requireMemory('the window', estimateLattice(model, { window: [range] }), memory);
+  if (signal?.aborted) throw new CancelledError('search');
+  const { cell, extents } = model.lattice;
+  const task: WavesTask = { lattice: { ...model, lattice: { cell, extents } }, wavesOfRange: range };
+  return inThread<WavesProgress, AllWaves>(task, onProgress, signal);
+}
+
 /** Runs a task in a worker: its result as a plain value. */
 async function inThread<P, R>(
-  task: Task | LatticeTask,
+  task: Task | LatticeTask | WavesTask,
   onProgress: ((progress: P) => void) | undefined,
   signal: AbortSignal | undefined,
 ): Promise<R> {

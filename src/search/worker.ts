@@ -4,6 +4,7 @@ import { HoldfastError, InputError } from '../errors.ts';
 import { type Extent, Lattice } from '../lattice/lattice.ts';
 import type { LatticeModel } from '../model/lattice-model.ts';
 import { checkpointIn } from './checkpoint.ts';
+import { type AllWaves, allWaves, type WavesProgress } from './lattice/all-waves.ts';
 import type { LatticeResult } from './lattice/result.ts';
 import { type LatticeOptions, type LatticeProgress, searchLatticeNow } from './lattice/search.ts';
 import type { Method } from './result.ts';
@@ -31,6 +32,11 @@ export interface LatticeTask {
   readonly options: Omit<LatticeOptions, 'onProgress'>;
 }
 
+/** All wave numbers of a chain at once. */
+export interface WavesTask extends Pick<LatticeTask, 'lattice'> {
+  readonly wavesOfRange: number;
+}
+
 export type Answer<P, R> =
   | { readonly kind: 'progress'; readonly progress: P }
   | { readonly kind: 'result'; readonly result: R }
@@ -47,11 +53,12 @@ const INTERVAL = 100;
 
 const port = parentPort;
 if (port !== null) {
-  const task = workerData as Task | LatticeTask;
+  const task = workerData as Task | LatticeTask | WavesTask;
   let last = performance.now();
-  const answer = (message: Answer<Progress | LatticeProgress, PlainPart | LatticeResult>) =>
-    port.postMessage(message);
-  const onProgress = (progress: Progress | LatticeProgress) => {
+  const answer = (
+    message: Answer<Progress | LatticeProgress | WavesProgress, PlainPart | LatticeResult | AllWaves>,
+  ) => port.postMessage(message);
+  const onProgress = (progress: Progress | LatticeProgress | WavesProgress) => {
     const now = performance.now();
     if (now - last < INTERVAL) return;
     last = now;
@@ -61,7 +68,11 @@ if (port !== null) {
     if ('lattice' in task) {
       const { cell, extents } = task.lattice.lattice;
       const model = { ...task.lattice, lattice: new Lattice(cell, extents) };
-      answer({ kind: 'result', result: searchLatticeNow(model, { ...task.options, onProgress }) });
+      const result =
+        'wavesOfRange' in task
+          ? allWaves(model, task.wavesOfRange, onProgress)
+          : searchLatticeNow(model, { ...task.options, onProgress });
+      answer({ kind: 'result', result });
     } else {
       const { model, checkpoint, sector, ...options } = task;
       const part = searchSector(modelOf(model), sector, {

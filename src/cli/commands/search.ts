@@ -12,8 +12,7 @@ import {
 import { type PageOptions, reportPage } from '../../report/page.ts';
 import { pictureOfResult } from '../../report/picture.ts';
 import { printResult } from '../../report/text.ts';
-import { search as searchInBackground, searchLattice } from '../../search/background.ts';
-import { allWaves } from '../../search/lattice/all-waves.ts';
+import { searchAllWaves, search as searchInBackground, searchLattice } from '../../search/background.ts';
 import { methodFor } from '../../search/plan.ts';
 import type { SearchResult } from '../../search/result.ts';
 import { checkWithProgress } from '../certificate-file.ts';
@@ -122,6 +121,8 @@ Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
 /** What the chain's search has and this one does not write. */
 const CHAIN_ONLY = ['certificate', 'checkpoint', 'threads', 'sectors', 'latex', 'report', 'picture'] as const;
 
+const WAVE_STAGES = ['list', 'peel', 'assemble', 'solve'];
+
 async function runOnLattice(input: CommandInput): Promise<number> {
   for (const name of CHAIN_ONLY)
     if (input.values[name] !== undefined)
@@ -136,7 +137,12 @@ async function runOnLattice(input: CommandInput): Promise<number> {
   if (input.values['all-waves'] === true) {
     if (range === undefined || options.wave !== undefined || options.period !== undefined)
       throw new InputError('--all-waves', '--range alone', 'another window, wave or period beside it');
-    const waves = allWaves(model, range, () => input.signal.throwIfAborted());
+    const line = shareLine(input, 'all wave numbers');
+    const waves = await searchAllWaves(model, range, {
+      signal: input.signal,
+      onProgress: (stage) => line.show(WAVE_STAGES.indexOf(stage) / WAVE_STAGES.length),
+      ...(memory === undefined ? {} : { memory }),
+    }).finally(line.clear);
     input.out(
       input.values['json'] === true
         ? `${JSON.stringify(allWavesToJson(waves), null, 2)}\n`

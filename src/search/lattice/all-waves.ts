@@ -46,20 +46,22 @@ export interface AllWaves {
   readonly candidates: number;
 }
 
+/** Stages of very different length: candidates, equations that settle one of them, the rest as a matrix, its diagonal form. */
+export type WavesProgress = 'list' | 'peel' | 'assemble' | 'solve';
+
 /** Width of isolating intervals: 2^−bits. */
 const BITS = 30;
 
 /**
+ * @param onProgress called every few milliseconds; whatever it throws stops the work
  * @throws InputError unless the model is an infinite chain; LimitError for too many candidates
  */
 export function allWaves(
   model: LatticeModel,
   range: number,
-  onProgress: (stage: string) => void = () => {},
+  onProgress: (stage: WavesProgress) => void = () => {},
 ): AllWaves {
-  const { extents } = model.lattice;
-  if (extents.length !== 1 || extents[0]!.kind !== 'infinite')
-    throw new InputError('all wave numbers', 'an infinite chain', 'another lattice');
+  assertChain(model);
   const space = new StringSpace(model, [range], { steps: [1], exponents: [1], order: 1 });
   const keys = space.candidates(() => onProgress('list'));
   const left = peel(space, keys, () => onProgress('peel'));
@@ -93,6 +95,12 @@ export function allWaves(
     exceptions: Object.freeze(exceptionsOf(divisors, nullity)),
     candidates: keys.length / space.limbs,
   });
+}
+
+/** @throws InputError unless the model is an infinite chain */
+export function assertChain({ lattice: { extents } }: LatticeModel): void {
+  if (extents.length !== 1 || extents[0]!.kind !== 'infinite')
+    throw new InputError('all wave numbers', 'an infinite chain', 'another lattice');
 }
 
 function fromPowers(powers: ReadonlyMap<number, bigint>): Laurent | undefined {

@@ -1,9 +1,22 @@
-import { describe, expect, it } from 'vitest';
+import { describe, expect, it, test } from 'vitest';
+import { CancelledError, LimitError } from '../../../src/errors.ts';
 import { parseModel } from '../../../src/model/formula.ts';
 import { chainModel } from '../../../src/model/lattice-model.ts';
+import { searchAllWaves } from '../../../src/search/background.ts';
 import { allWaves } from '../../../src/search/lattice/all-waves.ts';
 import { searchLatticeNow } from '../../../src/search/lattice/search.ts';
 import { property } from '../../support/random.ts';
+
+test('in a thread: the same answer, stages in order, and an end when told', async () => {
+  const model = chainModel(parseModel('XX + YY + 2 X'));
+  const stages: string[] = [];
+  const found = await searchAllWaves(model, 4, { onProgress: (stage) => void stages.push(stage) });
+  expect(found).toEqual(allWaves(model, 4));
+  const order = ['list', 'peel', 'assemble', 'solve'];
+  expect(stages.every((stage) => order.includes(stage))).toBe(true);
+  await expect(searchAllWaves(model, 4, { signal: AbortSignal.abort() })).rejects.toThrow(CancelledError);
+  await expect(searchAllWaves(model, 8, { memory: 1e6 })).rejects.toThrow(LimitError);
+});
 
 const wavesOf = (formula: string, range: number) => allWaves(chainModel(parseModel(formula)), range);
 const roots = (formula: string, range: number) =>
