@@ -111,6 +111,7 @@ export {
   residual,
   smallestCorrection,
 } from './physics/residual.ts';
+export type { Rotation } from './physics/rotation.ts';
 export {
   isStrictlyLocal,
   type Label,

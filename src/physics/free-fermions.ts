@@ -13,10 +13,18 @@
 import { Operator } from '../algebra/operator.ts';
 import { multiply, ONE, type Rational, rational, textFromRational, ZERO } from '../algebra/rational.ts';
 import { firstSpin, letterAt, spanOf, type Word } from '../algebra/word.ts';
-import { InputError, show } from '../errors.ts';
+import { InputError, LimitError, show } from '../errors.ts';
 import type { Chain } from '../lattice/chain.ts';
 import { type Hamiltonian, hamiltonianOf } from '../model/hamiltonian.ts';
 import { characteristicPolynomial, Laurent, type LaurentMatrix } from './laurent.ts';
+import {
+  fermionAxes,
+  integerRoot,
+  inverseRotation,
+  type Rotation,
+  rotateOperator,
+  rotationToZ,
+} from './rotation.ts';
 import { relations } from './span.ts';
 
 /** The axis that plays the part of Z on a spin of the cell; the two others follow in cyclic order, a proper rotation. */
@@ -24,9 +32,11 @@ export type Axis = 'X' | 'Y' | 'Z';
 
 export interface FreeFermions {
   readonly hamiltonian: Hamiltonian;
+  /** A rotation of all spins before the axes are renamed; null where none is needed. */
+  readonly rotation: Rotation | null;
   /** One axis a spin of the cell. */
   readonly axes: readonly Axis[];
-  /** H with these axes renamed to Z: bilinear as it stands. */
+  /** H rotated, and with these axes renamed to Z: bilinear as it stands. */
   readonly rotated: Hamiltonian;
   /** Terms c·iγ_mγ_n; Majorana 2s is a_s, 2s + 1 is b_s, m on a spin of cell 0, m < n. */
   readonly bilinears: readonly { readonly m: number; readonly n: number; readonly coefficient: Rational }[];
@@ -47,17 +57,33 @@ export interface Dispersion {
   readonly polynomial: readonly Laurent[];
 }
 
+/** Longest charges that are rotated back, in spins: a string of so many letters becomes up to 3⁸ strings. */
+export const MAX_ROTATED_SPINS = 8;
+
 /** Most spins a cell for which every choice of axes is tried; above, all spins get the same axis. */
 const MAX_SEPARATE = 4;
 
 /**
- * Recognises a chain that is bilinear after a renaming of axes, the same in every cell; each spin of the cell may have its own. Null where
- * there is none; rotations by other angles, and other orders of the spins along the chain, are not tried.
+ * Recognises a chain that is bilinear after a renaming of axes, the same in every cell; each spin of the cell may have its own; or after one
+ * rotation of all spins with rational entries. Null where there is none. Directions of irrational length, such as (1, 1, 0), and other
+ * orders of the spins along the chain are not tried.
  */
 export function freeFermions(h: Hamiltonian): FreeFermions | null {
+  const found = afterRenaming(h, h.density, null);
+  if (found !== null) return found;
+  for (const axis of fermionAxes(h.density)) {
+    const rotation = rotationToZ(axis);
+    if (rotation === null) continue;
+    const turned = afterRenaming(h, rotateOperator(h.density, rotation), rotation);
+    if (turned !== null) return turned;
+  }
+  return null;
+}
+
+function afterRenaming(h: Hamiltonian, turned: Operator, rotation: Rotation | null): FreeFermions | null {
   const { cell } = h.chain;
   for (const axes of axisChoices(cell)) {
-    const density = h.density.mapWords((word) => renamed(word, axes, 1));
+    const density = turned.mapWords((word) => renamed(word, axes, 1));
     const bilinears: { m: number; n: number; coefficient: Rational }[] = [];
     let all = true;
     for (const [word, c] of density.terms()) {
@@ -75,6 +101,7 @@ export function freeFermions(h: Hamiltonian): FreeFermions | null {
     );
     return Object.freeze({
       hamiltonian: h,
+      rotation,
       axes,
       rotated: hamiltonianOf(h.chain, density),
       bilinears,
@@ -197,21 +224,10 @@ function dispersionOf(block: LaurentMatrix): Dispersion {
 function root(f: Laurent, latex: boolean): string {
   const constant = f.asConstant();
   if (constant !== null && constant.numerator >= 0n) {
-    const [n, d] = [squareRoot(constant.numerator), squareRoot(constant.denominator)];
+    const [n, d] = [integerRoot(constant.numerator), integerRoot(constant.denominator)];
     if (n !== null && d !== null) return textFromRational(rational(n, d));
   }
   return latex ? `\\sqrt{${f.toText(true)}}` : `sqrt(${f.toText()})`;
-}
-
-function squareRoot(value: bigint): bigint | null {
-  let low = 0n;
-  let high = value + 1n;
-  while (high - low > 1n) {
-    const middle = (low + high) / 2n;
-    if (middle * middle <= value) low = middle;
-    else high = middle;
-  }
-  return low * low === value ? low : null;
 }
 
 function plusMinus(middle: string, size: string): string[] {
@@ -239,19 +255,27 @@ function powers(polynomial: readonly Laurent[], latex: boolean): string {
  * Why there are so many: iB(q) with [A(q), B(q)] = 0 is conserved. All 2cos(dq)·A(q)^m, m odd, and 2i sin(dq)·A(q)^m, m even, are such
  * B, so two charges appear for about every range of a chain of one spin a cell.
  *
- * @throws InputError for a range that is no positive integer
+ * @throws InputError for a range that is no positive integer; LimitError for one too long to be rotated back
  */
-export function bilinearCharges({ rotated, axes }: FreeFermions, range: number): Operator[] {
+export function bilinearCharges({ rotated, axes, rotation }: FreeFermions, range: number): Operator[] {
   if (!(Number.isInteger(range) && range >= 1))
     throw new InputError('bilinear charges', 'a range of one cell or more, a whole number', show(range));
   const { chain, density } = rotated;
+  if (rotation !== null && range * chain.cell > MAX_ROTATED_SPINS)
+    throw new LimitError(
+      `bilinear charges: of a chain that had to be rotated up to ${MAX_ROTATED_SPINS} spins, range × cell; the rotated chain itself has none of this limit`,
+    );
+  const back = rotation === null ? null : inverseRotation(rotation);
   const words = bilinearWords(chain, range);
   const images = words.map((word) => chain.bracket(density, Operator.fromIntegers([[word, 1n]])));
   return relations(images).map((relation) => {
     const sum = Operator.fromTerms([...relation].map(([i, c]) => [words[i]!, c] as const));
     const longest = chain.rangeOf(sum);
     const [leading] = sum.filter((word) => chain.range(word) === longest).terms();
-    return sum.primitive(leading![0]).mapWords((word) => renamed(word, axes, -1));
+    const own = sum.primitive(leading![0]).mapWords((word) => renamed(word, axes, -1));
+    if (back === null) return own;
+    const turned = rotateOperator(own, back);
+    return turned.primitive([...turned.terms()][0]![0]);
   });
 }
 

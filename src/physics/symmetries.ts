@@ -7,7 +7,7 @@ import type { Hamiltonian } from '../model/hamiltonian.ts';
 import { candidateCount } from '../search/estimate.ts';
 import type { SearchResult } from '../search/result.ts';
 import { localCommutator } from './currents.ts';
-import { bilinearCharges, freeFermions } from './free-fermions.ts';
+import { bilinearCharges, freeFermions, MAX_ROTATED_SPINS } from './free-fermions.ts';
 import { relations, Span } from './span.ts';
 
 export type LabelKind =
@@ -50,7 +50,9 @@ export function labelCharges(result: SearchResult): readonly Label[] {
   const whole = su2Of(h).find((spins) => spins.length === chain.cell);
   const fermions = freeFermions(h);
   const bilinear = new Span();
-  if (fermions !== null) for (const q of bilinearCharges(fermions, result.range)) bilinear.add(q);
+  // Beyond this, charges of a chain that had to be rotated stay without the label.
+  const short = fermions?.rotation === null || result.range * chain.cell <= MAX_ROTATED_SPINS;
+  if (fermions !== null && short) for (const q of bilinearCharges(fermions, result.range)) bilinear.add(q);
   const local = charges.map(({ density }) => isStrictlyLocal(h, density));
   return Object.freeze(
     charges.map(({ density, range }, i) => {
@@ -88,9 +90,13 @@ export function labelCharges(result: SearchResult): readonly Label[] {
   );
 }
 
-/** Symmetries of H itself. Staggered densities are looked for up to range 2, range 1 for wide cells. */
+/** Staggered densities are looked for as far as so many candidates: range 4 for one spin a cell, 2 for two, 1 for more. */
+const MAX_STAGGERED_CANDIDATES = 300;
+
+/** Symmetries of H itself. */
 export function namedSymmetries(h: Hamiltonian): NamedSymmetries {
-  const staggeredRange = candidateCount(h.chain.cell, 2) <= 1000 ? 2 : 1;
+  let staggeredRange = 1;
+  while (candidateCount(h.chain.cell, staggeredRange + 1) <= MAX_STAGGERED_CANDIDATES) staggeredRange++;
   return Object.freeze({
     su2: su2Of(h),
     parities: paritiesOf(h),

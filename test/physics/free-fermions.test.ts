@@ -1,5 +1,9 @@
 import { describe, expect, it } from 'vitest';
+import type { Operator } from '../../src/algebra/operator.ts';
+import { rational } from '../../src/algebra/rational.ts';
+import { LimitError } from '../../src/errors.ts';
 import { parseModel } from '../../src/model/formula.ts';
+import { hamiltonianOf } from '../../src/model/hamiltonian.ts';
 import {
   bilinearCharges,
   type FreeFermions,
@@ -7,9 +11,11 @@ import {
   ringMatrix,
 } from '../../src/physics/free-fermions.ts';
 import { characteristicPolynomial } from '../../src/physics/laurent.ts';
+import { inverseRotation, rotateOperator, rotationToZ } from '../../src/physics/rotation.ts';
 import { Span } from '../../src/physics/span.ts';
 import { searchNow } from '../../src/search/search.ts';
-import { eigenvalues, sectorMatrix } from '../support/diagonalise.ts';
+import { eigenvalues, realMatrix, sectorMatrix } from '../support/diagonalise.ts';
+import { property } from '../support/random.ts';
 
 const model = (formula: string, cell = 1) => parseModel(formula, { cell });
 
@@ -171,5 +177,80 @@ describe('freeFermions', () => {
       for (const [i, level] of levels.entries()) worst = Math.max(worst, Math.abs(level - filled[i]!));
       expect(worst).toBeLessThan(1e-6);
     }
+  });
+
+  /** The chain of a formula with its Z axis turned to a direction of rational length. */
+  const turned = (formula: string, direction: readonly [number, number, number]) => {
+    const rotation = rotationToZ(direction.map((c) => rational(BigInt(c))))!;
+    const h = model(formula);
+    return hamiltonianOf(h.chain, rotateOperator(h.density, inverseRotation(rotation)));
+  };
+
+  it.each([
+    ['XX + YY', [1, 2, 2]],
+    ['XX + 1/2 YY + 2/3 Z', [2, -3, 6]],
+    ['XX + 3 Z', [3, 0, 4]],
+    ['XZX + 2 YY + Z', [1, 2, 2]],
+    ['XY + 2 YX + XX', [4, 4, -7]],
+    ['XZX + YZY', [2, 1, 2]],
+    ['XX', [3, 4, 0]],
+  ] as const)(
+    '%s with Z along (%j): the same bands, and the charges that a search finds',
+    (formula, axis) => {
+      const h = turned(formula, axis);
+      const found = freeFermions(h)!;
+      // The angle about the axis is open, and Z may come out reversed: then particles are holes, and q is −q.
+      const plain = freeFermions(model(formula))!;
+      const bands = (f: FreeFermions, q: number) =>
+        characteristicPolynomial(f.block).map((c) =>
+          (c.valueAt(q)[0] + 0).toFixed(9).replace(/^-(0\.0+)$/, '$1'),
+        );
+      for (const q of [0.7, 2.1]) expect([bands(plain, q), bands(plain, -q)]).toContainEqual(bands(found, q));
+      const span = new Span();
+      for (const q of bilinearCharges(found, 3)) {
+        expect(h.chain.bracket(h.density, q).isZero()).toBe(true);
+        expect(span.add(q)).toBeNull();
+      }
+      expect(bilinearCharges(found, 3)).toHaveLength(bilinearCharges(plain, 3).length);
+    },
+  );
+
+  it('a rotated ring has the levels of filled modes, both sectors together', () => {
+    const h = turned('XX + 1/2 YY + 2/3 Z', [3, 0, 4]);
+    const found = freeFermions(h)!;
+    expect(found.rotation).not.toBeNull();
+    const levels = eigenvalues(realMatrix(h.density, 1, 8));
+    const filled = [...filledModes(found, 8, 1), ...filledModes(found, 8, -1)].sort((a, b) => a - b);
+    expect(filled).toHaveLength(levels.length);
+    let worst = 0;
+    for (const [i, level] of levels.entries()) worst = Math.max(worst, Math.abs(level - filled[i]!));
+    expect(worst).toBeLessThan(1e-6);
+  });
+
+  it('says no where the rotation is irrational or nothing helps, and refuses charges too long to turn back', () => {
+    // Field along (1, 1, 0), whose length is no rational number.
+    expect(freeFermions(model('ZZ + X + Y'))).toBeNull();
+    expect(freeFermions(turned('XX + YY + ZZ + Z', [1, 2, 2]))).toBeNull();
+    expect(() => bilinearCharges(freeFermions(turned('XX + YY', [1, 2, 2]))!, 9)).toThrow(LimitError);
+  });
+});
+
+describe('rotations', () => {
+  property('are proper, go back, and keep commutators', 30, (random) => {
+    const vector = random
+      .pick([
+        [1, 2, 2],
+        [2, 3, 6],
+        [-3, 0, 4],
+        [0, 0, -1],
+        [1, 4, 8],
+      ])
+      .map((c) => rational(BigInt(c)));
+    const rotation = rotationToZ(vector)!;
+    const [a, b] = [random.operator(3, 3), random.operator(3, 3)];
+    const turn = (x: Operator) => rotateOperator(x, rotation);
+    expect(rotateOperator(turn(a), inverseRotation(rotation)).equals(a)).toBe(true);
+    // Only proper rotations are automorphisms of the algebra: a reflection would turn the sign.
+    expect(turn(a.bracket(b)).equals(turn(a).bracket(turn(b)))).toBe(true);
   });
 });

@@ -1,4 +1,5 @@
 /** `holdfast fermions`: is the chain one of free fermions, and which? */
+import { textFromRational } from '../../algebra/rational.ts';
 import { InputError, show } from '../../errors.ts';
 import { bilinearCharges, freeFermions } from '../../physics/free-fermions.ts';
 import { printDensity } from '../../report/text.ts';
@@ -11,9 +12,9 @@ export const fermions: Command = {
   help: `holdfast fermions FORMULA
 
 Says whether the chain is bilinear under the Jordan-Wigner transformation along the spins, after a renaming of axes that may differ from
-spin to spin of the cell. If so: the Bogoliubov-de Gennes block h(q) in the basis c_q, c†_{-q} with H = sum over q of Ψ†hΨ, its eigenvalues
-λ(q) in closed form (a mode costs 2λ), and the bilinear charges. Other rotations and other orders of the
-spins are not tried, so "no" is no proof.
+spin to spin of the cell, or after one rotation of all spins with rational entries. If so: the Bogoliubov-de Gennes block h(q) in the basis c_q, c†_{-q} with H = sum over q of Ψ†hΨ, its eigenvalues
+λ(q) in closed form (a mode costs 2λ), and the bilinear charges. Rotations with irrational entries and other orders of
+the spins are not tried, so "no" is no proof.
 
   holdfast fermions "XX + YY"
   holdfast fermions "ZZ + 2 X" --range 6
@@ -45,16 +46,17 @@ Exit status: 0 answered (free or not), 1 a failure, 2 bad input.`,
       input.out(
         json
           ? '{"bilinear": false}\n'
-          : 'Not bilinear in Jordan-Wigner fermions along the spins, whatever axis is called Z. Other rotations and other transformations are not tried.\n',
+          : 'Not bilinear in Jordan-Wigner fermions along the spins, whatever axis is called Z, nor after a rotation with rational entries. Other rotations and other transformations are not tried.\n',
       );
       return Exit.done;
     }
-    const { axes, rotated, block, conservesNumber, dispersion } = found;
+    const { axes, rotation, rotated, block, conservesNumber, dispersion } = found;
     const charges = bilinearCharges(found, range);
     const latex = input.values['latex'] === true;
     if (json) {
       const answer = {
         bilinear: true,
+        rotation: rotation?.map((row) => row.map(textFromRational)) ?? null,
         axes,
         rotated: rotated.density,
         conservesNumber,
@@ -77,6 +79,10 @@ Exit status: 0 answered (free or not), 1 a failure, 2 bad input.`,
       return Exit.done;
     }
     const lines = ['Free fermions: bilinear under the Jordan-Wigner transformation.'];
+    if (rotation !== null)
+      lines.push(
+        `All spins rotated: the direction (${rotation[2]!.map(textFromRational).join(', ')}) becomes Z; H = Σ ${printDensity(rotated, rotated.density)}`,
+      );
     if (axes.some((axis) => axis !== 'Z'))
       lines.push(
         `Axes renamed, spin by spin of the cell: ${axes.map((a) => `${a} is called Z`).join(', ')}; H = Σ ${printDensity(rotated, rotated.density)}`,
