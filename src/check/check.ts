@@ -4,6 +4,7 @@
  */
 import { fields, Malformed, parseCanonical, Rejected, string } from './document.ts';
 import { checkEveryRange, EVERY_RANGE } from './every-range.ts';
+import { checkEveryRangeModular, EVERY_RANGE_MODULAR } from './every-range-modular.ts';
 import { checkExhaustive, KIND, type Parts } from './exhaustive.ts';
 import { checkGrowth, GROWTH } from './growth.ts';
 import { sha256 } from './sha256.ts';
@@ -30,6 +31,7 @@ export interface CheckOptions {
 const KINDS: ReadonlyMap<string, (parts: Parts) => Generator<number, string>> = new Map([
   [KIND, checkExhaustive],
   [EVERY_RANGE, checkEveryRange],
+  [EVERY_RANGE_MODULAR, checkEveryRangeModular],
   [GROWTH, checkGrowth],
 ]);
 

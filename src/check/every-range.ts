@@ -34,7 +34,16 @@ function statement(cell: number, atMost: number): string {
 
 export type Density = Map<number, bigint>;
 
-export function* checkEveryRange(parts: Parts): Generator<number, string> {
+/** What both kinds share. */
+export interface EveryRangeClaim {
+  readonly cell: number;
+  readonly chain: Growth;
+  readonly atMost: number;
+  /** The statement, which is the one that goes with the model and the bound. */
+  readonly words: string;
+}
+
+export function readEveryRange(parts: Parts): EveryRangeClaim {
   const model = fields(parts.model, ['cell', 'range', 'terms'], 'model');
   const cell = natural(model.cell, 'cell', 1, MAX_CELL);
   if (natural(model.range, 'range of the model', 1, 16) !== 2)
@@ -51,17 +60,32 @@ export function* checkEveryRange(parts: Parts): Generator<number, string> {
     throw new Rejected('the assumptions are not those of the claim');
   if (list(parts.charges, 'charges', 1).length > 0)
     throw new Malformed('a charge, where none is part of the claim');
-  const evidence = fields(parts.evidence, ['prime', 'free', 'topParts', 'functionals', 'minors'], 'evidence');
+  return { cell, chain: new Growth(cell, terms), atMost, words };
+}
+
+/** The prime and the top parts of the evidence, with injectivity and completeness: V1 and V2. */
+export function* provenTopParts(
+  { cell, chain }: EveryRangeClaim,
+  evidence: { readonly prime: Value; readonly free: Value; readonly topParts: Value },
+): Generator<number, { readonly p: number; readonly topParts: readonly Density[] }> {
   const p = natural(evidence.prime, 'prime', 3, PRIME_BOUND - 1);
   if (!isPrime(p)) throw new Rejected('the modulus is not a prime');
-
-  const chain = new Growth(cell, terms);
-  const parts2 = list(evidence.topParts, 'topParts', MAX_PARTS).map((v) => density(v, cell, 2, 'a top part'));
+  const topParts = list(evidence.topParts, 'topParts', MAX_PARTS).map((v) =>
+    density(v, cell, 2, 'a top part'),
+  );
   const free = list(evidence.free, 'free', MAX_PARTS).map((v) =>
     readWord(string(v, 'free'), cell, 2, 'free'),
   );
   yield* injective(chain, p);
-  yield* completeTopParts(chain, parts2, free, p);
+  yield* completeTopParts(chain, topParts, free, p);
+  return { p, topParts };
+}
+
+export function* checkEveryRange(parts: Parts): Generator<number, string> {
+  const claim = readEveryRange(parts);
+  const { cell, chain, atMost, words } = claim;
+  const evidence = fields(parts.evidence, ['prime', 'free', 'topParts', 'functionals', 'minors'], 'evidence');
+  const { topParts: parts2 } = yield* provenTopParts(claim, evidence);
   const functionals = list(evidence.functionals, 'functionals', MAX_FUNCTIONALS).map((v) =>
     density(v, cell, 4, 'a functional'),
   );
@@ -81,7 +105,7 @@ export function* checkEveryRange(parts: Parts): Generator<number, string> {
   return words;
 }
 
-function density(value: Value, cell: number, cells: number, what: string): Density {
+export function density(value: Value, cell: number, cells: number, what: string): Density {
   const terms = readTerms(value, cell, cells, what);
   if (terms.length === 0) throw new Malformed(`${what} is empty`);
   if (terms.some((t) => t.range !== cells))

@@ -143,7 +143,7 @@ function* topParts(chain: Growth, p: number): Generator<number, Density[]> {
 }
 
 /** (R − A) O_3 modulo p. */
-function* imageOfGrowth(chain: Growth, p: number): Generator<number, Echelon> {
+export function* imageOfGrowth(chain: Growth, p: number): Generator<number, Echelon> {
   const rows = chain.strings(3).map((s) => modulo(chain.growth(new Map([[s, 1n]]), 3), p));
   const usage = new Map<number, number>();
   for (const row of rows) for (const column of row.keys()) usage.set(column, (usage.get(column) ?? 0) + 1);
@@ -156,9 +156,9 @@ function* imageOfGrowth(chain: Growth, p: number): Generator<number, Echelon> {
 }
 
 /** Residues by column, none zero. */
-type Row = Map<number, number>;
+export type Row = Map<number, number>;
 
-function modulo(q: Density, p: number): Row {
+export function modulo(q: Density, p: number): Row {
   const row: Row = new Map();
   for (const [column, value] of q) {
     const r = residue(value, p);
@@ -179,7 +179,7 @@ function combined(a: Row, factor: number, b: Row, p: number): Row {
 }
 
 /** Rows in echelon form modulo p: a pivot row has no entry in the pivot columns of earlier ones, and 1 in its own. */
-class Echelon {
+export class Echelon {
   readonly #pivots: { readonly column: number; readonly row: Row }[] = [];
 
   /** @param usage how many rows use a column: pivots are taken where few do. Any choice gives the same ranks. */

@@ -1,6 +1,6 @@
-/** Certificates of the kind `every-range`: what an independent checker needs to evaluate the pencil again and believe its bound. */
+/** Certificates of the kinds `every-range` and `every-range-modular`: what an independent checker needs to evaluate the pencil again and believe its bound. */
 import { Operator } from '../algebra/operator.ts';
-import { rational } from '../algebra/rational.ts';
+import { divide, rational } from '../algebra/rational.ts';
 import { canonicalText, terms, text } from '../certificate/document.ts';
 import { VERSION } from '../certificate/version.ts';
 import { LimitError } from '../errors.ts';
@@ -20,7 +20,7 @@ import { exactNullSpace, MatrixBuilder } from '../search/null-space.ts';
 import { decompose } from './decompose.ts';
 import { CellGrowth, injectivity } from './growth.ts';
 import { traceProduct } from './orthogonal.ts';
-import { boundsOf } from './pencil.ts';
+import { boundsOf, type Pencil } from './pencil.ts';
 
 /** The limits of what is claimed; docs/certificate.md lists them word for word. */
 const ASSUMES = [
@@ -38,24 +38,61 @@ function statementOf(cell: number, atMost: number): string {
 }
 
 /**
- * The certificate that an injective chain of one spin a cell has at most so many charges of every range k ≥ 3; canonical text. Milliseconds.
+ * The certificate that an injective chain of one or two spins a cell has at most so many charges of every range k ≥ 3; canonical text.
+ * Milliseconds for one spin a cell, a second for two: there the checker computes the pencil modulo a prime, since functionals on four cells
+ * of two spins are too many to list.
  *
- * @throws LimitError for other models: functionals on four cells of two spins are too many to list
+ * @throws LimitError for other models, and where the pencil of two spins a cell loses rank at values that no range takes
  */
 export function everyRangeCertificate(h: Hamiltonian): string {
   const model = decompose(h);
-  if (model === undefined || model.spins !== 1 || model.group !== 1 || h.range !== 2)
-    throw new LimitError('every-range certificate: written for one spin a cell and interactions of range 2');
+  if (model === undefined || model.spins > 2 || model.group !== 1 || h.range !== 2)
+    throw new LimitError(
+      'every-range certificate: written for one or two spins a cell and interactions of range 2',
+    );
   const kernel = injectivity(model);
   if (kernel.left.length > 0 || kernel.right.length > 0)
     throw new LimitError(
       'every-range certificate: the interaction is not injective, and half steps have none yet',
     );
-  const chain = new Chain(1);
+  const chain = new Chain(model.spins);
   const growth = new CellGrowth(model);
   const { topParts, pencil: reduced } = growth.pencil();
   const { generic, exceptional } = boundsOf(reduced, 0);
   const atMost = Math.max(generic, ...exceptional.map((e) => e.dimension));
+  const prime = primesBelow().next().value!;
+  const free = topParts.map((f) => {
+    const own = [...f.numerators.keys()].find((w) => topParts.every((g) => g === f || !g.numerators.has(w)));
+    return text(chain, own!);
+  });
+  const head = {
+    certificate: 'conserved quantities of a spin chain',
+    version: 1,
+    kind: model.spins === 2 ? 'every-range-modular' : 'every-range',
+    tool: `holdfast ${VERSION}`,
+    model: { cell: model.spins, range: 2, terms: terms(chain, h.density) },
+    claim: { from: 3, atMost, statement: statementOf(model.spins, atMost), assumes: ASSUMES },
+    charges: [],
+  };
+  if (model.spins === 2) {
+    const root = rootBelowRanges(reduced, topParts.length - atMost);
+    if (root === undefined)
+      throw new LimitError(
+        'every-range certificate: the pencil of two spins a cell loses rank at values that no range takes; modulo a prime some range does',
+      );
+    return canonicalText({
+      ...head,
+      evidence: {
+        prime,
+        free,
+        topParts: topParts.map((f) => terms(chain, f)),
+        root: String(root),
+        witnesses: growth
+          .witnesses(topParts, root)
+          .map(({ parts, x }) => ({ parts: parts.map(String), x: terms(chain, x) })),
+      },
+    });
+  }
   const inner = topParts.map((f) => growth.inner(f));
   const functionals: Operator[] = [];
   const rows: (readonly [bigint, bigint])[][] = [];
@@ -67,26 +104,37 @@ export function everyRangeCertificate(h: Hamiltonian): string {
     rows.push(row);
     functionals.push(functional);
   }
-  const free = topParts.map((f) => {
-    const own = [...f.numerators.keys()].find((w) => topParts.every((g) => g === f || !g.numerators.has(w)));
-    return text(chain, own!);
-  });
   return canonicalText({
-    certificate: 'conserved quantities of a spin chain',
-    version: 1,
-    kind: 'every-range',
-    tool: `holdfast ${VERSION}`,
-    model: { cell: 1, range: 2, terms: terms(chain, h.density) },
-    claim: { from: 3, atMost, statement: statementOf(1, atMost), assumes: ASSUMES },
-    charges: [],
+    ...head,
     evidence: {
-      prime: primesBelow().next().value!,
+      prime,
       free,
       topParts: topParts.map((f) => terms(chain, f)),
       functionals: functionals.map((f) => terms(chain, f)),
       minors: minorsOf(rows, topParts.length - atMost, topParts.length),
     },
   });
+}
+
+/** Where H alone makes the pencil lose rank: k = 1, t = −2. */
+const USUAL_ROOT = -2n;
+
+/**
+ * The one negative integer at which the pencil may lose rank, and then by one; elsewhere it has rank `size`. Undefined where constant
+ * entries of the diagonal form, and one linear entry with such a root, are not enough to see it.
+ */
+function rootBelowRanges({ constant, linear }: Pencil, size: number): bigint | undefined {
+  const matrix = constant.map((row, i) => row.map((a, j) => univariateOf(a, linear[i]![j]!)));
+  const diagonal = diagonalForm(matrix);
+  const missing = size - diagonal.filter((entry) => entry.length === 1).length;
+  if (missing <= 0) return USUAL_ROOT;
+  if (missing > 1) return undefined;
+  for (const entry of diagonal) {
+    if (entry.length !== 2) continue;
+    const { numerator, denominator } = divide(entry[0]!, entry[1]!);
+    if (denominator === 1n && numerator > 0n) return -numerator;
+  }
+  return undefined;
 }
 
 /** A basis of the functionals on O_4 that vanish on (R − A) O_3. */

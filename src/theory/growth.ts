@@ -115,6 +115,35 @@ export class CellGrowth {
     return { topParts, pencil: pencilFromRelations(this.#relations(inner), topParts.length) };
   }
 
+  /**
+   * Why the pencil loses rank at t: combinations c of the top parts and x in O_3 with Σ c_i (α_i + t β_i) = (R − ωA) x, the c independent.
+   */
+  witnesses(
+    topParts: readonly Operator[],
+    t: bigint,
+  ): { readonly parts: readonly bigint[]; readonly x: Operator }[] {
+    const builder = new MatrixBuilder();
+    topParts.forEach((f, i) => {
+      const { alpha, beta } = this.inner(f);
+      for (const [word, value] of alpha.plus(beta.times(t)).numerators) builder.add(Number(word), i, value);
+    });
+    const strings = this.strings(3);
+    const v = topParts.length;
+    strings.forEach((string, i) => {
+      this.addColumn(builder, v + i, string, 3);
+    });
+    return exactNullSpace(builder.finish(v + strings.length)).flatMap(({ columns, values }) => {
+      if (columns[0]! >= v) return [];
+      const parts = new Array<bigint>(v).fill(0n);
+      const x: [bigint, bigint][] = [];
+      columns.forEach((c, i) => {
+        if (c < v) parts[c] = values[i]!;
+        else x.push([BigInt(strings[c - v]!), -values[i]!]);
+      });
+      return [{ parts, x: Operator.fromIntegers(x) }];
+    });
+  }
+
   #relations(inner: readonly { alpha: Operator; beta: Operator }[]): IntegerVector[] {
     const builder = new MatrixBuilder();
     const r = inner.length;

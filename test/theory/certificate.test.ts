@@ -74,3 +74,68 @@ describe('every-range certificates', () => {
     },
   );
 });
+
+describe('every-range certificates of two spins a cell', () => {
+  const hubbard = parseModel('XIXI + YIYI + IXIX + IYIY + 3 ZZ', { cell: 2 });
+  const broken = parseModel('XIXI + YIYI + IXIX + IYIY + 3 ZZ + ZI + 2 IZ + XI', { cell: 2 });
+
+  it.each([
+    [hubbard, 1],
+    [broken, 0],
+    [parseModel('XIXI + 2 YIYI + 3 ZIZI + 4 IXIX + 5 IYIY + 7 IZIZ + XX + YIIX', { cell: 2 }), 0],
+  ] as const)('%s: at most %i of every range, accepted', (h, atMost) => {
+    const verdict = checkNow(everyRangeCertificate(h));
+    expect(verdict).toMatchObject({ status: 'accepted', kind: 'every-range-modular' });
+    const bound = everyRangeBound(decompose(h)!);
+    expect('generic' in bound && bound.generic).toBe(atMost);
+    expect(verdict.status === 'accepted' && verdict.statement).toMatch(
+      atMost === 0 ? /no translation-invariant/ : /at most 1 dimension/,
+    );
+  });
+
+  it('is rejected when it claims too little, about another model, or with false evidence', () => {
+    const one = everyRangeCertificate(hubbard);
+    const none = everyRangeCertificate(broken);
+    const noneStatement = /"claim":\{.*?"assumes"/.exec(none)![0];
+    const forged = [
+      one.replace(/"claim":\{.*?"assumes"/, noneStatement),
+      // With the field of the other model gone, there is a charge of every range.
+      none.replace(/"terms":\[\["IX.*?\]\]\}/, /"terms":\[\["IX.*?\]\]\}/.exec(one)![0]),
+      none.replace('"root":"-2"', '"root":"-1"'),
+      none.replace('"root":"-2"', '"root":"2"'),
+      none.replace('"root":"-2"', `"root":"${67108859 - 2}"`),
+      none.replace('"root":"-2"', `"root":"-${67108859 + 2}"`),
+      none.replace(/"witnesses":.*\]\}\}/, '"witnesses":[]}}'),
+      none.replace(/"parts":\[.*?\]/, '"parts":["0","0","0","0"]'),
+      none.replace(/"x":\[\["(\w+)","/, '"x":[["$1","7'),
+      none.replace(/"topParts":\[.*?\]\]\]/, '"topParts":[]').replace(/"free":\[.*?\]/, '"free":[]'),
+      none.replace(/"prime":\d+/, '"prime":67108857'),
+      none.replace(/"prime":\d+/, '"prime":3'),
+      none.replace('"every-range-modular"', '"every-range"'),
+    ];
+    forged.forEach((text, i) => {
+      expect([i, text === one || text === none]).toEqual([i, false]);
+      expect([i, checkNow(text).status]).toEqual([i, expect.stringMatching(/rejected|malformed/)]);
+    });
+  });
+
+  property(
+    'random ladders: whatever is written is accepted, and claims the bound of the pencil',
+    8,
+    (random) => {
+      const legs = ['XIXI', 'YIYI', 'ZIZI', 'IXIX', 'IYIY', 'IZIZ'].map(
+        (word) => `${random.nonZero(3)} ${word}`,
+      );
+      const others = ['XX', 'YY', 'ZZ', 'XIIY', 'IZXI', 'XI', 'IZ', 'ZX']
+        .filter(() => random.chance(0.4))
+        .map((word) => `${random.nonZero(3)} ${word}`);
+      const h = parseModel([...legs, ...others].join(' + ').replaceAll('+ -', '- '), { cell: 2 });
+      const bound = everyRangeBound(decompose(h)!);
+      if ('reason' in bound || bound.method !== 'cells') return;
+      const text = everyRangeCertificate(h);
+      expect(checkNow(text)).toMatchObject({ status: 'accepted' });
+      const { claim } = JSON.parse(text) as { claim: { atMost: number } };
+      expect(claim.atMost).toBe(Math.max(bound.generic, ...bound.exceptional.map((e) => e.atMost)));
+    },
+  );
+});

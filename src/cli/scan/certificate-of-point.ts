@@ -46,7 +46,7 @@ export function faultOfCertificate(
       ? null
       : 'proves other charges than were recorded';
   }
-  if (answer.kind === 'decide' && kind === 'every-range') {
+  if (answer.kind === 'decide' && (kind === 'every-range' || kind === 'every-range-modular')) {
     const most =
       answer.bound && Math.max(answer.bound.generic, ...answer.bound.exceptional.map(([, atMost]) => atMost));
     return claim.atMost === most ? null : 'proves another bound than was recorded';
