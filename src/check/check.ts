@@ -7,6 +7,7 @@ import { checkEveryRange, EVERY_RANGE } from './every-range.ts';
 import { checkEveryRangeModular, EVERY_RANGE_MODULAR } from './every-range-modular.ts';
 import { checkExhaustive, KIND, type Parts } from './exhaustive.ts';
 import { checkGrowth, GROWTH } from './growth.ts';
+import { checkHalfSteps, HALF_STEPS } from './half-steps.ts';
 import { sha256 } from './sha256.ts';
 
 export type Verdict =
@@ -33,6 +34,7 @@ const KINDS: ReadonlyMap<string, (parts: Parts) => Generator<number, string>> = 
   [EVERY_RANGE, checkEveryRange],
   [EVERY_RANGE_MODULAR, checkEveryRangeModular],
   [GROWTH, checkGrowth],
+  [HALF_STEPS, checkHalfSteps],
 ]);
 
 /** The check, step by step: yields the share of the work done. Never throws for a bad certificate, whatever is in it. */

@@ -11,6 +11,7 @@ import {
   type EveryRangeClaim,
   provenTopParts,
   readEveryRange,
+  type Steps,
 } from './every-range.ts';
 import type { Parts } from './exhaustive.ts';
 import { Echelon, imageOfGrowth, modulo, type Row } from './growth.ts';
@@ -22,10 +23,31 @@ export function* checkEveryRangeModular(parts: Parts): Generator<number, string>
   const claim: EveryRangeClaim = readEveryRange(parts);
   const { chain, atMost, words } = claim;
   const evidence = fields(parts.evidence, ['prime', 'free', 'topParts', 'root', 'witnesses'], 'evidence');
+  const { p, topParts } = yield* provenTopParts(claim, evidence);
+  yield* boundByPencil(chain, 3, topParts, atMost, p, evidence, (x) =>
+    density(x, claim.cell, 3, 'a witness'),
+  );
+  return words;
+}
+
+/**
+ * M1 to M4: at every integer t ≥ 0 the pencil leaves at most so many top parts.
+ *
+ * @param length of the densities whose growth is divided out
+ * @param read a density of that length
+ */
+export function* boundByPencil(
+  chain: Steps,
+  length: number,
+  topParts: readonly Density[],
+  atMost: number,
+  p: number,
+  evidence: { readonly root: Value; readonly witnesses: Value },
+  read: (x: Value) => Density,
+): Generator<number> {
   const root = integer(evidence.root, 'root');
   if (root >= 0n) throw new Rejected('the root is not below every range');
-  const { p, topParts } = yield* provenTopParts(claim, evidence);
-  const image = yield* imageOfGrowth(chain, p);
+  const image = yield* imageOfGrowth(chain, p, length);
   // M1: α and β modulo (R − A) O_3 and p; M2: as rows (α_1 … α_v, β_1 … β_v), a few independent ones.
   const coordinates = new Map<number, Row>();
   topParts.forEach((f, i) => {
@@ -49,7 +71,7 @@ export function* checkEveryRangeModular(parts: Parts): Generator<number, string>
   const size = topParts.length - atMost;
   const common = size > 0 ? commonRoots(pencil, topParts.length, size, p) : [1];
   // M3: no common root, or the one of the evidence, once.
-  if (common.length === 1) return words;
+  if (common.length === 1) return;
   if (common.length !== 2 || (common[0]! + multiply(residue(root, p), common[1]!, p)) % p !== 0)
     throw new Rejected(`the pencil does not keep rank ${size} at every element of the field`);
   // M4: the rank is less at the root, exactly.
@@ -68,12 +90,11 @@ export function* checkEveryRangeModular(parts: Parts): Generator<number, string>
       put(alpha, c[i]!);
       put(beta, root * c[i]!);
     });
-    put(chain.growth(density(x, claim.cell, 3, 'a witness'), 3), -1n);
+    put(chain.growth(read(x), length), -1n);
     if ([...total.values()].some((v) => v !== 0n)) throw new Rejected('a witness does not hold');
     if (found.insert(modulo(new Map(c.map((v, i) => [i + 1, v])), p))) count++;
   }
   if (count <= atMost) throw new Rejected('too few witnesses of the root');
-  return words;
 }
 
 function integer(value: Value, what: string): bigint {

@@ -13,20 +13,20 @@ export const EVERY_RANGE = 'every-range';
 
 /** Limits: strings on four cells of one or two spins; top parts, functionals and minors; steps of t that are looked at one by one. */
 const MAX_CELL = 2;
-const MAX_PARTS = 6;
+export const MAX_PARTS = 6;
 const MAX_FUNCTIONALS = 64;
 const MAX_MINORS = 256;
 const MAX_STEPS = 100_000n;
 
-const ASSUMES = [
+const ASSUMES = (from: number) => [
   'The Hamiltonian is the sum of all translates, by whole cells, of the listed terms; every cell holds the same number of spins 1/2.',
   'Counted are sums of all translates, by whole cells, of one combination of Pauli strings; the identity is left out.',
-  'Ranges 1 and 2 are no part of the claim.',
+  `Ranges 1 ${from === 3 ? 'and' : 'to'} ${from - 1} are no part of the claim.`,
   'Nothing is said about quasilocal, non-local or staggered conserved quantities.',
 ];
 
-function statement(cell: number, atMost: number): string {
-  const chain = `On the infinite chain of cells of ${cell} spin${cell === 1 ? '' : 's'} 1/2, for every k of 3 or more`;
+function statement(cell: number, atMost: number, from: number): string {
+  const chain = `On the infinite chain of cells of ${cell} spin${cell === 1 ? '' : 's'} 1/2, for every k of ${from} or more`;
   return atMost === 0
     ? `${chain}, there is no translation-invariant conserved quantity of range exactly k cells.`
     : `${chain}, the translation-invariant conserved quantities of range at most k cells exceed those of range at most k - 1 by at most ${atMost} dimension${atMost === 1 ? '' : 's'}.`;
@@ -43,20 +43,23 @@ export interface EveryRangeClaim {
   readonly words: string;
 }
 
-export function readEveryRange(parts: Parts): EveryRangeClaim {
+/** @param from first range of the claim, which the kind decides */
+export function readEveryRange(parts: Parts, from = 3): EveryRangeClaim {
   const model = fields(parts.model, ['cell', 'range', 'terms'], 'model');
   const cell = natural(model.cell, 'cell', 1, MAX_CELL);
   if (natural(model.range, 'range of the model', 1, 16) !== 2)
     throw new Rejected('the interaction does not have range 2');
   const terms = readTerms(model.terms, cell, 2, 'model');
   const claim = fields(parts.claim, ['from', 'atMost', 'statement', 'assumes'], 'claim');
-  if (natural(claim.from, 'from', 1, 99) !== 3)
-    throw new Rejected('the bound starts at another range than 3');
-  const atMost = natural(claim.atMost, 'atMost', 0, MAX_PARTS);
+  if (natural(claim.from, 'from', 1, 99) !== from)
+    throw new Rejected(`the bound starts at another range than ${from}`);
+  const atMost = natural(claim.atMost, 'atMost', 0, 2 * MAX_PARTS);
   const words = string(claim.statement, 'statement');
-  if (words !== statement(cell, atMost)) throw new Rejected('the statement is not the one that is proved');
-  const assumes = list(claim.assumes, 'assumes', ASSUMES.length);
-  if (assumes.length !== ASSUMES.length || assumes.some((text, i) => text !== ASSUMES[i]))
+  if (words !== statement(cell, atMost, from))
+    throw new Rejected('the statement is not the one that is proved');
+  const wanted = ASSUMES(from);
+  const assumes = list(claim.assumes, 'assumes', wanted.length);
+  if (assumes.length !== wanted.length || assumes.some((text, i) => text !== wanted[i]))
     throw new Rejected('the assumptions are not those of the claim');
   if (list(parts.charges, 'charges', 1).length > 0)
     throw new Malformed('a charge, where none is part of the claim');
@@ -114,13 +117,23 @@ export function density(value: Value, cell: number, cells: number, what: string)
 }
 
 /** Times the common denominator. */
-function integers(terms: readonly Term[]): Density {
+export function integers(terms: readonly Term[]): Density {
   const common = terms.reduce((d, t) => lcm(d, t.coefficient.denominator), 1n);
   return new Map(terms.map((t) => [t.word, (t.coefficient.numerator * common) / t.coefficient.denominator]));
 }
 
+/** Growth by whole cells, or by half steps: what the pencil is made of. */
+export interface Steps {
+  /** Strings of exactly this length. */
+  strings(length: number): number[];
+  /** (R − A) q. */
+  growth(q: Density, length: number): Density;
+  /** α and β of a top part. */
+  inner(f: Density): { alpha: Density; beta: Density };
+}
+
 /** h on two cells, w on one, and growth by them. */
-export class Growth {
+export class Growth implements Steps {
   readonly bits: number;
   readonly letters: number;
   readonly h: Density = new Map();
@@ -187,7 +200,7 @@ function bracket(x: Density, y: Density): Density {
   return result;
 }
 
-function sum(x: Density, y: Density, factor = 1n): Density {
+export function sum(x: Density, y: Density, factor = 1n): Density {
   const result = new Map(x);
   for (const [s, c] of y) result.set(s, (result.get(s) ?? 0n) + factor * c);
   return result;
@@ -209,22 +222,23 @@ export function* injective(chain: Growth, p: number): Generator<number> {
   }
 }
 
-/** V2: the top parts are a basis of ker (R − A) on O_2. */
-function* completeTopParts(
-  chain: Growth,
+/** V2: the top parts are a basis of ker (R − A) on O_2, or on the densities of another length. */
+export function* completeTopParts(
+  chain: Steps,
   topParts: readonly Density[],
   free: readonly number[],
   p: number,
+  length = 2,
 ): Generator<number> {
   if (topParts.length !== free.length) throw new Rejected('not as many free strings as top parts');
   topParts.forEach((f, i) => {
-    if ([...chain.growth(f, 2).values()].some((c) => c !== 0n))
+    if ([...chain.growth(f, length).values()].some((c) => c !== 0n))
       throw new Rejected('a top part is not in the kernel of growth');
     if (free.some((s, j) => f.has(s) !== (i === j)))
       throw new Rejected('a free string is not in its top part alone');
   });
-  const rest = chain.strings(2).filter((s) => !free.includes(s));
-  const images = rest.map((s) => chain.growth(new Map([[s, 1n]]), 2));
+  const rest = chain.strings(length).filter((s) => !free.includes(s));
+  const images = rest.map((s) => chain.growth(new Map([[s, 1n]]), length));
   if (!(yield* fullRank(images, p))) throw new Rejected('there are more top parts than the listed ones');
 }
 

@@ -5,7 +5,7 @@
  */
 import { lcm, phase, type Term } from './chain.ts';
 import { fields, natural, Rejected } from './document.ts';
-import { type Density, Growth, injective } from './every-range.ts';
+import { type Density, Growth, injective, type Steps } from './every-range.ts';
 import { type Charge, checkClaim, leadingPartsIndependent, type Parts, readClaim } from './exhaustive.ts';
 import { inverse, isPrime, multiply, PRIME_BOUND, residue } from './modular.ts';
 
@@ -142,9 +142,9 @@ function* topParts(chain: Growth, p: number): Generator<number, Density[]> {
   return found;
 }
 
-/** (R − A) O_3 modulo p. */
-export function* imageOfGrowth(chain: Growth, p: number): Generator<number, Echelon> {
-  const rows = chain.strings(3).map((s) => modulo(chain.growth(new Map([[s, 1n]]), 3), p));
+/** (R − A) O_3, or the image of another length, modulo p. */
+export function* imageOfGrowth(chain: Steps, p: number, length = 3): Generator<number, Echelon> {
+  const rows = chain.strings(length).map((s) => modulo(chain.growth(new Map([[s, 1n]]), length), p));
   const usage = new Map<number, number>();
   for (const row of rows) for (const column of row.keys()) usage.set(column, (usage.get(column) ?? 0) + 1);
   const echelon = new Echelon(p, usage);

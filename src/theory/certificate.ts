@@ -1,4 +1,4 @@
-/** Certificates of the kinds `every-range` and `every-range-modular`: what an independent checker needs to evaluate the pencil again and believe its bound. */
+/** Certificates of the kinds `every-range`, `every-range-modular` and `half-steps`: what an independent checker needs to evaluate the pencil again and believe its bound. */
 import { Operator } from '../algebra/operator.ts';
 import { divide, rational } from '../algebra/rational.ts';
 import { canonicalText, terms, text } from '../certificate/document.ts';
@@ -17,28 +17,30 @@ import {
 } from '../linear/univariate.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
 import { exactNullSpace, MatrixBuilder } from '../search/null-space.ts';
-import { decompose } from './decompose.ts';
+import { type BondsAndFields, decompose } from './decompose.ts';
 import { CellGrowth, injectivity } from './growth.ts';
+import { HalfStepGrowth, halfSteps } from './half-steps.ts';
 import { traceProduct } from './orthogonal.ts';
 import { boundsOf, type Pencil } from './pencil.ts';
 
 /** The limits of what is claimed; docs/certificate.md lists them word for word. */
-const ASSUMES = [
+const assumes = (from: number) => [
   'The Hamiltonian is the sum of all translates, by whole cells, of the listed terms; every cell holds the same number of spins 1/2.',
   'Counted are sums of all translates, by whole cells, of one combination of Pauli strings; the identity is left out.',
-  'Ranges 1 and 2 are no part of the claim.',
+  `Ranges 1 ${from === 3 ? 'and' : 'to'} ${from - 1} are no part of the claim.`,
   'Nothing is said about quasilocal, non-local or staggered conserved quantities.',
 ];
 
-function statementOf(cell: number, atMost: number): string {
-  const chain = `On the infinite chain of cells of ${cell} spin${cell === 1 ? '' : 's'} 1/2, for every k of 3 or more`;
+function statementOf(cell: number, atMost: number, from = 3): string {
+  const chain = `On the infinite chain of cells of ${cell} spin${cell === 1 ? '' : 's'} 1/2, for every k of ${from} or more`;
   return atMost === 0
     ? `${chain}, there is no translation-invariant conserved quantity of range exactly k cells.`
     : `${chain}, the translation-invariant conserved quantities of range at most k cells exceed those of range at most k - 1 by at most ${atMost} dimension${atMost === 1 ? '' : 's'}.`;
 }
 
 /**
- * The certificate that an injective chain of one or two spins a cell has at most so many charges of every range k ≥ 3; canonical text.
+ * The certificate that an injective chain of one or two spins a cell has at most so many charges of every range k ≥ 3, or an Ising-type chain
+ * with its bond along an axis at most so many of every range k ≥ 5; canonical text.
  * Milliseconds for one spin a cell, a second for two: there the checker computes the pencil modulo a prime, since functionals on four cells
  * of two spins are too many to list.
  *
@@ -51,10 +53,7 @@ export function everyRangeCertificate(h: Hamiltonian): string {
       'every-range certificate: written for one or two spins a cell and interactions of range 2',
     );
   const kernel = injectivity(model);
-  if (kernel.left.length > 0 || kernel.right.length > 0)
-    throw new LimitError(
-      'every-range certificate: the interaction is not injective, and half steps have none yet',
-    );
+  if (kernel.left.length > 0 || kernel.right.length > 0) return halfStepCertificate(h, model);
   const chain = new Chain(model.spins);
   const growth = new CellGrowth(model);
   const { topParts, pencil: reduced } = growth.pencil();
@@ -71,7 +70,7 @@ export function everyRangeCertificate(h: Hamiltonian): string {
     kind: model.spins === 2 ? 'every-range-modular' : 'every-range',
     tool: `holdfast ${VERSION}`,
     model: { cell: model.spins, range: 2, terms: terms(chain, h.density) },
-    claim: { from: 3, atMost, statement: statementOf(model.spins, atMost), assumes: ASSUMES },
+    claim: { from: 3, atMost, statement: statementOf(model.spins, atMost), assumes: assumes(3) },
     charges: [],
   };
   if (model.spins === 2) {
@@ -112,6 +111,74 @@ export function everyRangeCertificate(h: Hamiltonian): string {
       topParts: topParts.map((f) => terms(chain, f)),
       functionals: functionals.map((f) => terms(chain, f)),
       minors: minorsOf(rows, topParts.length - atMost, topParts.length),
+    },
+  });
+}
+
+/** First range that half steps speak of. */
+const HALF_STEP_FROM = 5;
+
+function halfStepCertificate(h: Hamiltonian, model: BondsAndFields): string {
+  const steps = halfSteps(model);
+  if (!steps.ok)
+    throw new LimitError(
+      `every-range certificate: the interaction is not injective, and there are no half steps, since ${steps.reason}`,
+    );
+  const { letters } = steps;
+  if (model.spins !== 1 || model.bond.size !== 1)
+    throw new LimitError(
+      'every-range certificate: half steps are written for one spin a cell and a bond along X, Y or Z',
+    );
+  const growth = new HalfStepGrowth(letters);
+  const { topParts, pencil } = growth.pencil();
+  const { generic, exceptional } = boundsOf(pencil, 0);
+  const most = Math.max(generic, ...exceptional.map((e) => e.dimension));
+  const root = rootBelowRanges(pencil, topParts.length - most);
+  if (root === undefined)
+    throw new LimitError(
+      'every-range certificate: the pencil of half steps loses rank at values that no range takes; modulo a prime some range does',
+    );
+  // Letters are Pauli letters here, up to a sign that their primitive form fixes.
+  const chain = new Chain(1);
+  const operator = (q: ReadonlyMap<number, bigint>): Operator =>
+    Operator.fromIntegers(
+      [...q].map(([string, value]) => {
+        let [word, factor, rest, shift] = [0n, value, string, 0n];
+        for (; rest > 0; rest = Math.floor(rest / letters.count), shift += 2n) {
+          const [[letter, sign]] = [...letters.basis[rest % letters.count]!.numerators] as [[bigint, bigint]];
+          word |= letter << shift;
+          factor *= sign;
+        }
+        return [word, factor] as const;
+      }),
+    );
+  const operators = topParts.map(operator);
+  const free = operators.map((f) => {
+    const own = [...f.numerators.keys()].find((w) => operators.every((g) => g === f || !g.numerators.has(w)));
+    return text(chain, own!);
+  });
+  const atMost = 2 * most;
+  return canonicalText({
+    certificate: 'conserved quantities of a spin chain',
+    version: 1,
+    kind: 'half-steps',
+    tool: `holdfast ${VERSION}`,
+    model: { cell: 1, range: 2, terms: terms(chain, h.density) },
+    claim: {
+      from: HALF_STEP_FROM,
+      atMost,
+      statement: statementOf(1, atMost, HALF_STEP_FROM),
+      assumes: assumes(HALF_STEP_FROM),
+    },
+    charges: [],
+    evidence: {
+      prime: primesBelow().next().value!,
+      free,
+      topParts: operators.map((f) => terms(chain, f)),
+      root: String(root),
+      witnesses: growth
+        .witnesses(topParts, root)
+        .map(({ parts, x }) => ({ parts: parts.map(String), x: terms(chain, operator(x)) })),
     },
   });
 }

@@ -13,7 +13,7 @@ import { type Combination, type Letters, lettersOf } from './letters.ts';
 import { type Pencil, pencilFromRelations, ZERO_PENCIL } from './pencil.ts';
 
 /** A density: strings as numbers in base `letters.count`, first site lowest, first letter not the identity. */
-type Density = Map<number, bigint>;
+export type Density = Map<number, bigint>;
 
 /** Half-length at which the inner part becomes linear in ℓ. */
 export const CORE_LENGTH = 6;
@@ -171,6 +171,43 @@ export class HalfStepGrowth {
     );
   }
 
+  /** α = R D_6 and β = D_7 − R D_6 of a top part: the pencil at half-length ℓ is α + (ℓ − 6) β. */
+  parts(f: Density): { alpha: Density; beta: Density } {
+    const f6 = this.right(this.right(this.right(f)));
+    const alpha = this.right(this.inner(f6));
+    const beta = new Map(this.inner(this.right(f6)));
+    for (const [string, value] of alpha) beta.set(string, (beta.get(string) ?? 0n) - value);
+    return { alpha, beta };
+  }
+
+  /** As `CellGrowth.witnesses`, x of half-length 6. */
+  witnesses(
+    topParts: readonly Density[],
+    t: bigint,
+  ): { readonly parts: readonly bigint[]; readonly x: Density }[] {
+    const builder = new MatrixBuilder();
+    topParts.forEach((f, i) => {
+      const { alpha, beta } = this.parts(f);
+      for (const [string, value] of alpha) builder.add(string, i, value);
+      for (const [string, value] of beta) builder.add(string, i, t * value);
+    });
+    const strings = this.strings(CORE_LENGTH);
+    const v = topParts.length;
+    strings.forEach((string, i) => {
+      this.addColumn(builder, v + i, string);
+    });
+    return exactNullSpace(builder.finish(v + strings.length)).flatMap(({ columns, values }) => {
+      if (columns[0]! >= v) return [];
+      const parts = new Array<bigint>(v).fill(0n);
+      const x = new Map<number, bigint>();
+      columns.forEach((c, i) => {
+        if (c < v) parts[c] = values[i]!;
+        else x.set(strings[c - v]!, -values[i]!);
+      });
+      return [{ parts, x }];
+    });
+  }
+
   /** The pencil `R D_6 + (ℓ − 6)(D_7 − R D_6)` modulo `(R − ωA) G_6`, for ℓ ≥ 7. */
   pencil(): { topParts: Density[]; pencil: Pencil } {
     const topParts = this.topParts();
@@ -178,14 +215,9 @@ export class HalfStepGrowth {
     if (r === 0) return { topParts, pencil: ZERO_PENCIL };
     const builder = new MatrixBuilder();
     topParts.forEach((f, i) => {
-      const f6 = this.right(this.right(this.right(f)));
-      const constant = this.right(this.inner(f6));
-      const next = this.inner(this.right(f6));
-      for (const [string, value] of constant) {
-        builder.add(string, i, value);
-        builder.add(string, r + i, -value);
-      }
-      for (const [string, value] of next) builder.add(string, r + i, value);
+      const { alpha, beta } = this.parts(f);
+      for (const [string, value] of alpha) builder.add(string, i, value);
+      for (const [string, value] of beta) builder.add(string, r + i, value);
     });
     const strings = this.strings(CORE_LENGTH);
     strings.forEach((string, i) => {

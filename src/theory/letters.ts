@@ -18,6 +18,8 @@ export type Combination = readonly (readonly [letter: number, value: bigint])[];
 export interface Letters {
   /** Number of letters with the identity, which is letter 0. */
   readonly count: number;
+  /** What the letters are. */
+  readonly basis: readonly Operator[];
   /** Letters 1 … kept are a basis of K, the rest of C. */
   readonly kept: number;
   /** Common denominator of the tables: entries are `denominator` times the structure constants. */
@@ -90,6 +92,7 @@ export function lettersOf(model: BondsAndFields): Letters | undefined {
   const common = axis.reduce((g, [, v]) => gcd(g, v), 0n);
   return {
     count: all,
+    basis,
     kept: keep.length,
     denominator,
     commutators: table((x, y) => x.bracket(y)),

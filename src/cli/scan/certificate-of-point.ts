@@ -46,7 +46,7 @@ export function faultOfCertificate(
       ? null
       : 'proves other charges than were recorded';
   }
-  if (answer.kind === 'decide' && (kind === 'every-range' || kind === 'every-range-modular')) {
+  if (answer.kind === 'decide' && ['every-range', 'every-range-modular', 'half-steps'].includes(kind)) {
     const most =
       answer.bound && Math.max(answer.bound.generic, ...answer.bound.exceptional.map(([, atMost]) => atMost));
     return claim.atMost === most ? null : 'proves another bound than was recorded';
