@@ -36,7 +36,8 @@ ${MODEL_HELP}
 Decide:
   --range K             search at least up to range K for what the lemmas leave open
   --wave-numbers        quantities that are not translation invariant, too (one spin a cell, injective)
-  --certificate FILE    writes the proof of the upper bound, for "holdfast check FILE" (one spin a cell, injective)
+  --certificate FILE    writes the proof of the upper bound, for "holdfast check FILE" (injective chains of
+                        one or two spins a cell, and Ising-type chains along an axis)
   --json                the verdict for machines, and nothing else, on standard output
 
 Exit status: 0 a verdict of one of the first four kinds, 1 undecided or a failure, 2 bad input.`,
@@ -71,14 +72,15 @@ Exit status: 0 a verdict of one of the first four kinds, 1 undecided or a failur
       },
     });
     if (input.interactive) input.note('\r\u001b[2K');
-    const file = input.values['certificate'];
-    if (typeof file === 'string')
-      await writeFileWhole('--certificate', file, [everyRangeCertificate(model)], input.signal);
+    // The answer first: a certificate that cannot be had then loses nothing.
     input.out(
       input.values['json'] === true
         ? `${JSON.stringify(verdictToJson(verdict), null, 2)}\n`
         : printVerdict(verdict),
     );
+    const file = input.values['certificate'];
+    if (typeof file === 'string')
+      await writeFileWhole('--certificate', file, [everyRangeCertificate(model)], input.signal);
     return verdict.kind === 'undecided' ? Exit.failed : Exit.done;
   },
 };
