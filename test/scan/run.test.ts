@@ -1,5 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { checkNow } from '../../src/check/check.ts';
+import { faultOfCertificate } from '../../src/cli/scan/certificate-of-point.ts';
 import { LimitError } from '../../src/errors.ts';
 import { parseModel } from '../../src/model/formula.ts';
 import { readPlan } from '../../src/scan/plan.ts';
@@ -81,14 +82,26 @@ describe('a point', () => {
   });
 
   it('keeps its answer where no certificate can be had, and says why', async () => {
-    const own = plan({ model: { formula: 'Jx ZZ + g X' }, task: { kind: 'decide', certificates: true } });
+    // An Ising bond along no axis: a verdict by half steps, whose certificates are for bonds along one.
+    const own = plan({
+      model: { formula: 'Jx (XX + 2 XY + 2 YX + 4 YY) + g Z' },
+      task: { kind: 'decide', certificates: true },
+    });
     const { outcome, certificate } = await runPoint(own, ['1', '1']);
     expect(certificate).toBeNull();
     expect(outcome).toMatchObject({
       status: 'done',
       answer: { kind: 'decide', verdict: 'complete', perRange: 2 },
-      certificate: { none: expect.stringContaining('not injective') },
+      certificate: { none: expect.stringContaining('along X, Y or Z') },
     });
+  });
+
+  it('of a decision carries the certificate of its kind', async () => {
+    const own = plan({ model: { formula: 'Jx ZZ + g X' }, task: { kind: 'decide', certificates: true } });
+    const { outcome, certificate } = await runPoint(own, ['1', '1']);
+    expect(outcome).toMatchObject({ answer: { verdict: 'complete', perRange: 2 } });
+    expect(checkNow(certificate!)).toMatchObject({ status: 'accepted', kind: 'half-steps' });
+    expect(faultOfCertificate(own, ['1', '1'], outcome, certificate!)).toBeNull();
   });
 });
 

@@ -11,10 +11,10 @@ export const fermions: Command = {
   summary: 'free-fermion chains: block, dispersion and all bilinear charges',
   help: `holdfast fermions FORMULA
 
-Says whether the chain is bilinear under the Jordan-Wigner transformation along the spins, after a renaming of axes that may differ from
-spin to spin of the cell, or after one rotation of all spins with rational entries. If so: the Bogoliubov-de Gennes block h(q) in the basis c_q, c†_{-q} with H = sum over q of Ψ†hΨ, its eigenvalues
-λ(q) in closed form (a mode costs 2λ), and the bilinear charges. Rotations with irrational entries and other orders of
-the spins are not tried, so "no" is no proof.
+Says whether the chain is bilinear under the Jordan-Wigner transformation along the spins, after a renaming of axes that may differ
+from spin to spin of the cell, or after one rotation of all spins with rational entries. If so: the Bogoliubov-de Gennes block h(q) in
+the basis c_q, c†_{-q} with H = sum over q of Ψ†hΨ, its eigenvalues λ(q) in closed form (a mode costs 2λ), and the bilinear charges.
+Rotations with irrational entries and other orders of the spins are not tried, so "no" is no proof.
 
   holdfast fermions "XX + YY"
   holdfast fermions "ZZ + 2 X" --range 6
