@@ -21,7 +21,7 @@ import {
   substitute,
   variablesOf,
 } from './polynomial-division.ts';
-import { rational } from './rational.ts';
+import { rational, squareRoot as rootOf } from './rational.ts';
 
 /** The greatest common divisor, primitive; of zero and p it is p. */
 export function polynomialGcd(a: Polynomial, b: Polynomial): Polynomial {
@@ -207,7 +207,7 @@ function splitQuadratic(p: Polynomial, v: number): Polynomial[] | undefined {
 export function squareRoot(p: Polynomial): Polynomial | undefined {
   if (p.isZero()) return p;
   const lead = leadingMonomial(p);
-  const top = rationalRoot(p, lead);
+  const top = rootOf(p.coefficient(lead));
   for (let rest = lead; rest !== 0n; rest >>= EXPONENT_BITS) if ((rest & 1n) === 1n) return undefined;
   if (top === undefined) return undefined;
   let root = Polynomial.fromIntegers([[lead / 2n, top.numerator]], top.denominator);
@@ -222,23 +222,6 @@ export function squareRoot(p: Polynomial): Polynomial | undefined {
     root = root.plus(next);
   }
   return undefined;
-}
-
-function rationalRoot(p: Polynomial, m: Monomial): { numerator: bigint; denominator: bigint } | undefined {
-  const { numerator, denominator } = p.coefficient(m);
-  const [n, d] = [integerRoot(numerator), integerRoot(denominator)];
-  return n === undefined || d === undefined ? undefined : { numerator: n, denominator: d };
-}
-
-function integerRoot(n: bigint): bigint | undefined {
-  if (n < 0n) return undefined;
-  if (n < 2n) return n;
-  let x = 1n << BigInt((n.toString(2).length + 1) >> 1);
-  for (;;) {
-    const next = (x + n / x) >> 1n;
-    if (next >= x) return x * x === n ? x : undefined;
-    x = next;
-  }
 }
 
 /** Values tried for a variable besides those of other variables. */

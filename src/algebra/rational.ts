@@ -101,5 +101,27 @@ export function divide(a: Rational, b: Rational): Rational {
   return rational(a.numerator * b.denominator, a.denominator * b.numerator);
 }
 
+export function negate(a: Rational): Rational {
+  return { ...a, numerator: -a.numerator };
+}
+
+/** The root that is not negative, of the square of a rational; undefined for all others. */
+export function squareRoot({ numerator, denominator }: Rational): Rational | undefined {
+  const [n, d] = [integerRoot(numerator), integerRoot(denominator)];
+  return n === undefined || d === undefined ? undefined : { numerator: n, denominator: d };
+}
+
+function integerRoot(n: bigint): bigint | undefined {
+  if (n < 0n) return undefined;
+  if (n < 2n) return n;
+  // Newton's method from above.
+  let x = 1n << BigInt((n.toString(2).length + 1) >> 1);
+  for (;;) {
+    const next = (x + n / x) >> 1n;
+    if (next >= x) return x * x === n ? x : undefined;
+    x = next;
+  }
+}
+
 export const ZERO: Rational = { numerator: 0n, denominator: 1n };
 export const ONE: Rational = { numerator: 1n, denominator: 1n };

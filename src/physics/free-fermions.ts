@@ -11,20 +11,22 @@
  * Source: "Two soluble models of an antiferromagnetic chain", Ann. Phys. 16, 407 (1961).
  */
 import { Operator } from '../algebra/operator.ts';
-import { multiply, ONE, type Rational, rational, textFromRational, ZERO } from '../algebra/rational.ts';
+import {
+  multiply,
+  negate,
+  ONE,
+  type Rational,
+  rational,
+  squareRoot,
+  textFromRational,
+  ZERO,
+} from '../algebra/rational.ts';
 import { firstSpin, letterAt, spanOf, type Word } from '../algebra/word.ts';
 import { InputError, LimitError, show } from '../errors.ts';
 import type { Chain } from '../lattice/chain.ts';
 import { type Hamiltonian, hamiltonianOf } from '../model/hamiltonian.ts';
 import { characteristicPolynomial, Laurent, type LaurentMatrix } from './laurent.ts';
-import {
-  fermionAxes,
-  integerRoot,
-  inverseRotation,
-  type Rotation,
-  rotateOperator,
-  rotationToZ,
-} from './rotation.ts';
+import { fermionAxes, inverseRotation, type Rotation, rotateOperator, rotationToZ } from './rotation.ts';
 import { relations } from './span.ts';
 
 /** The axis that plays the part of Z on a spin of the cell; the two others follow in cyclic order, a proper rotation. */
@@ -92,7 +94,7 @@ function afterRenaming(h: Hamiltonian, turned: Operator, rotation: Rotation | nu
         all = false;
         break;
       }
-      bilinears.push({ m: pair.m, n: pair.n, coefficient: pair.sign > 0 ? c : negative(c) });
+      bilinears.push({ m: pair.m, n: pair.n, coefficient: pair.sign > 0 ? c : negate(c) });
     }
     if (!all) continue;
     const block = bogoliubovBlock(cell, bilinears);
@@ -158,10 +160,6 @@ function majoranaPair(word: Word): { m: number; n: number; sign: 1 | -1 } | null
   };
 }
 
-function negative(c: Rational): Rational {
-  return { ...c, numerator: -c.numerator };
-}
-
 /** h(q) = ½ M† iA(q) M with γ = M Ψ: a = c + c†, b = −i(c − c†). */
 function bogoliubovBlock(cell: number, bilinears: FreeFermions['bilinears']): Laurent[][] {
   const size = 2 * cell;
@@ -170,13 +168,13 @@ function bogoliubovBlock(cell: number, bilinears: FreeFermions['bilinears']): La
     const [i, j] = [m % size, n % size];
     const d = Math.floor(n / size) - Math.floor(m / size);
     a[i]![j] = a[i]![j]!.plus(Laurent.of([[d, coefficient]]));
-    a[j]![i] = a[j]![i]!.plus(Laurent.of([[-d, negative(coefficient)]]));
+    a[j]![i] = a[j]![i]!.plus(Laurent.of([[-d, negate(coefficient)]]));
   }
   const half = rational(1n, 2n);
   // Entry of M from Dirac column k (c for k < cell) to Majorana row i, as a Gaussian number.
   const entry = (i: number, k: number): [Rational, Rational] | null => {
     if (i >> 1 !== k % cell) return null;
-    return (i & 1) === 0 ? [ONE, ZERO] : [ZERO, k < cell ? negative(ONE) : ONE];
+    return (i & 1) === 0 ? [ONE, ZERO] : [ZERO, k < cell ? negate(ONE) : ONE];
   };
   return Array.from({ length: size }, (_, k) =>
     Array.from({ length: size }, (_, l) => {
@@ -186,7 +184,7 @@ function bogoliubovBlock(cell: number, bilinears: FreeFermions['bilinears']): La
           const [left, right] = [entry(i, k), entry(j, l)];
           if (left === null || right === null || a[i]![j]!.isZero()) continue;
           sum = sum.plus(
-            a[i]![j]!.scaled(left[0], negative(left[1]))
+            a[i]![j]!.scaled(left[0], negate(left[1]))
               .scaled(...right)
               .scaled(ZERO, half),
           );
@@ -204,11 +202,11 @@ function dispersionOf(block: LaurentMatrix): Dispersion {
   let write: ((latex: boolean) => string[]) | undefined;
   if (block.length === 1) write = (latex) => [block[0]![0]!.toText(latex)];
   else if (block.length === 2) {
-    const middle = polynomial[1]!.scaled(negative(half));
+    const middle = polynomial[1]!.scaled(negate(half));
     const radicand = middle.times(middle).minus(polynomial[0]!);
     write = (latex) => plusMinus(middle.toText(latex), root(radicand, latex));
   } else if (block.length === 4 && polynomial[1]!.isZero() && polynomial[3]!.isZero()) {
-    const middle = polynomial[2]!.scaled(negative(half));
+    const middle = polynomial[2]!.scaled(negate(half));
     const radicand = polynomial[2]!.times(polynomial[2]!).scaled(quarter).minus(polynomial[0]!);
     write = (latex) =>
       plusMinus(middle.toText(latex), root(radicand, latex)).flatMap((square) => {
@@ -223,10 +221,8 @@ function dispersionOf(block: LaurentMatrix): Dispersion {
 /** √f, simplified where f does not depend on q and is a square. */
 function root(f: Laurent, latex: boolean): string {
   const constant = f.asConstant();
-  if (constant !== null && constant.numerator >= 0n) {
-    const [n, d] = [integerRoot(constant.numerator), integerRoot(constant.denominator)];
-    if (n !== null && d !== null) return textFromRational(rational(n, d));
-  }
+  const exact = constant === null ? undefined : squareRoot(constant);
+  if (exact !== undefined) return textFromRational(exact);
   return latex ? `\\sqrt{${f.toText(true)}}` : `sqrt(${f.toText()})`;
 }
 

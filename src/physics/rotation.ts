@@ -1,6 +1,16 @@
 /** One rotation of all spins, with rational entries: what it does to operators, and where the Z axis of free fermions may point. */
 import { Operator } from '../algebra/operator.ts';
-import { add, divide, multiply, ONE, type Rational, rational, ZERO } from '../algebra/rational.ts';
+import {
+  add,
+  divide,
+  multiply,
+  negate,
+  ONE,
+  type Rational,
+  rational,
+  squareRoot,
+  ZERO,
+} from '../algebra/rational.ts';
 import { firstSpin, letterAt, spanOf, type Word } from '../algebra/word.ts';
 
 /** A proper rotation: entry [i][j] takes the axis j to its part along i; axes in the order X, Y, Z. */
@@ -43,9 +53,9 @@ export function inverseRotation(rotation: Rotation): Rotation {
  */
 export function rotationToZ(vector: Vector): Rotation | null {
   const length = squareRoot(dot(vector, vector));
-  if (length === null || length.numerator === 0n) return null;
+  if (length === undefined || length.numerator === 0n) return null;
   const unit = vector.map((c) => divide(c, length));
-  const normal = [unit[0]!, unit[1]!, add(unit[2]!, negative(ONE))];
+  const normal = [unit[0]!, unit[1]!, add(unit[2]!, negate(ONE))];
   const size = dot(normal, normal);
   return [0, 1, 2].map((i) =>
     [0, 1, 2].map((j) => {
@@ -53,8 +63,8 @@ export function rotationToZ(vector: Vector): Rotation | null {
       const reflected =
         size.numerator === 0n
           ? own
-          : add(own, negative(divide(multiply(rational(2n), multiply(normal[i]!, normal[j]!)), size)));
-      return i === 0 ? negative(reflected) : reflected;
+          : add(own, negate(divide(multiply(rational(2n), multiply(normal[i]!, normal[j]!)), size)));
+      return i === 0 ? negate(reflected) : reflected;
     }),
   );
 }
@@ -97,28 +107,6 @@ function dot(a: Vector, b: Vector): Rational {
 }
 
 function cross(a: Vector, b: Vector): Vector {
-  const part = (i: number, j: number) => add(multiply(a[i]!, b[j]!), negative(multiply(a[j]!, b[i]!)));
+  const part = (i: number, j: number) => add(multiply(a[i]!, b[j]!), negate(multiply(a[j]!, b[i]!)));
   return [part(1, 2), part(2, 0), part(0, 1)];
-}
-
-function negative(c: Rational): Rational {
-  return { ...c, numerator: -c.numerator };
-}
-
-/** The root of a square of a rational, else null. */
-function squareRoot({ numerator, denominator }: Rational): Rational | null {
-  const [n, d] = [integerRoot(numerator), integerRoot(denominator)];
-  return n === null || d === null ? null : rational(n, d);
-}
-
-/** The root of a perfect square, else null. By bisection: a few steps a bit. */
-export function integerRoot(value: bigint): bigint | null {
-  let low = 0n;
-  let high = value + 1n;
-  while (high - low > 1n) {
-    const middle = (low + high) / 2n;
-    if (middle * middle <= value) low = middle;
-    else high = middle;
-  }
-  return low * low === value ? low : null;
 }

@@ -9,8 +9,10 @@ import {
   lcm,
   MAX_NUMBER_LENGTH,
   multiply,
+  negate,
   rational,
   rationalFromText,
+  squareRoot,
   textFromRational,
   toFraction,
 } from '../../src/algebra/rational.ts';
@@ -46,6 +48,16 @@ describe('the field of rationals', () => {
     expect(gcd(a / g, b / g)).toBe(1n);
     const [p, q] = [a < 0n ? 1n - a : a + 1n, b < 0n ? 1n - b : b + 1n];
     expect(lcm(p, q) * gcd(p, q)).toBe(p * q);
+  });
+
+  property('a square has its root, a negative number and twice a square have none', 200, (random) => {
+    const a = anyRational(random);
+    const square = multiply(a, a);
+    expect(squareRoot(square)).toEqual(a.numerator < 0n ? negate(a) : a);
+    expect(add(a, negate(a))).toEqual(rational(0n));
+    if (a.numerator === 0n) return;
+    expect(squareRoot(negate(square))).toBeUndefined();
+    expect(squareRoot(add(square, square))).toBeUndefined();
   });
 
   test('division by zero is refused', () => {
