@@ -10,24 +10,19 @@ import { eliminate } from '../linear/elimination.ts';
 import type { Field } from '../linear/field.ts';
 import type { SparseVector } from '../linear/sparse.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
+import { BondGrowth, stringsOfRange } from './bond-growth.ts';
 
 /** Widest cell, in spins, whose strings of three cells are eliminated: 3,600 for two spins, 254,016 for three. */
 export const MAX_PENCIL_CELL = 2;
 
 /** The strings of range exactly so many cells, as operators. */
 export function stringsOf({ chain }: Hamiltonian, cells: number): Operator[] {
-  const letters = 4 ** chain.cell;
-  const found: Operator[] = [];
-  for (let s = cells === 1 ? 1 : letters ** (cells - 1); s < letters ** cells; s++)
-    if (s % letters !== 0) found.push(Operator.fromIntegers([[BigInt(s), 1n]]));
-  return found;
+  return stringsOfRange(2 * chain.cell, cells).map((s) => Operator.fromIntegers([[BigInt(s), 1n]]));
 }
 
 export class TopParts {
   readonly #h: Hamiltonian;
-  readonly #bond: Operator;
-  readonly #site: Operator;
-  readonly #bits: bigint;
+  readonly #growth: BondGrowth;
   /** A basis of V_2 modulo p, with residues as coefficients. */
   readonly shortest: readonly Operator[];
 
@@ -37,12 +32,11 @@ export class TopParts {
     readonly field: Field,
   ) {
     const whole = Operator.fromIntegers(h.density.numerators);
+    const part = (range: number) => whole.filter((word) => h.chain.range(word) === range);
     this.#h = h;
-    this.#bond = whole.filter((word) => h.chain.range(word) === 2);
-    this.#site = whole.filter((word) => h.chain.range(word) === 1);
-    this.#bits = BigInt(2 * h.chain.cell);
+    this.#growth = new BondGrowth(part(2), part(1), 2 * h.chain.cell);
     const strings = stringsOf(h, 2);
-    const grown = strings.map((q) => this.#grown(q, 2));
+    const grown = strings.map((q) => this.#growth.grown(q, 2));
     this.shortest = eliminate(rowsOf(grown, field), grown.length, field)
       .nullSpace()
       .map(({ columns, values }) =>
@@ -50,35 +44,6 @@ export class TopParts {
           columns.map((c, i) => [strings[c]!.numerators.keys().next().value!, BigInt(values[i]!)] as const),
         ),
       );
-  }
-
-  #at(q: Operator, cell: number): Operator {
-    return q.mapWords((word) => word << (this.#bits * BigInt(cell)));
-  }
-
-  #right(q: Operator, cells: number): Operator {
-    return q.bracket(this.#at(this.#bond, cells - 1));
-  }
-
-  #left(q: Operator): Operator {
-    return this.#bond.bracket(this.#at(q, 1));
-  }
-
-  /** (R − A) q. */
-  #grown(q: Operator, cells: number): Operator {
-    return this.#right(q, cells).minus(this.#left(q));
-  }
-
-  #inner(f: Operator): { alpha: Operator; beta: Operator } {
-    const f3 = this.#right(f, 2);
-    const m = this.#left(f3).bracket(this.#at(this.#bond, 1));
-    const g = f3.bracket(this.#at(this.#site, 1));
-    const firstCell = (1n << this.#bits) - 1n;
-    const eLeft = f3.bracket(this.#bond.plus(this.#site)).filter((word) => (word & firstCell) !== 0n);
-    const eRight = f3
-      .bracket(this.#at(this.#bond, 1).plus(this.#at(this.#site, 2)))
-      .filter((word) => word >> (2n * this.#bits) !== 0n);
-    return { alpha: this.#right(g.plus(eLeft).plus(eRight), 3), beta: m.plus(this.#right(g, 3)) };
   }
 
   /**
@@ -90,10 +55,10 @@ export class TopParts {
     const { field, shortest } = this;
     const r = shortest.length;
     if (r === 0) return Array.from({ length: k + 1 }, () => []);
-    const inner = shortest.map((f) => this.#inner(f));
+    const inner = shortest.map((f) => this.#growth.inner(f));
     const columns: Operator[] = [];
     for (const q of stringsOf(this.#h, 3)) {
-      columns.push(this.#grown(q, 3));
+      columns.push(this.#growth.grown(q, 3));
       if (columns.length % 256 === 0) yield;
     }
     const image = columns.length;

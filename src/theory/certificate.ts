@@ -1,7 +1,7 @@
 /** Certificates of the kinds `every-range`, `every-range-modular` and `half-steps`: what an independent checker needs to evaluate the pencil again and believe its bound. */
 import { Operator } from '../algebra/operator.ts';
 import { divide, rational } from '../algebra/rational.ts';
-import { canonicalText, terms, text } from '../certificate/document.ts';
+import { canonicalText, terms, text, type Value } from '../certificate/document.ts';
 import { VERSION } from '../certificate/version.ts';
 import { LimitError } from '../errors.ts';
 import { Chain } from '../lattice/chain.ts';
@@ -19,9 +19,9 @@ import type { Hamiltonian } from '../model/hamiltonian.ts';
 import { exactNullSpace, MatrixBuilder } from '../search/null-space.ts';
 import { type BondsAndFields, decompose } from './decompose.ts';
 import { CellGrowth, injectivity } from './growth.ts';
-import { HalfStepGrowth, halfSteps } from './half-steps.ts';
+import { HALF_STEP_RANGE, HalfStepGrowth, halfSteps } from './half-steps.ts';
 import { traceProduct } from './orthogonal.ts';
-import { boundsOf, type Pencil } from './pencil.ts';
+import { boundsOf, diagonalOf, type Pencil, type Witness } from './pencil.ts';
 
 /** The limits of what is claimed; docs/certificate.md lists them word for word. */
 const assumes = (from: number) => [
@@ -31,7 +31,7 @@ const assumes = (from: number) => [
   'Nothing is said about quasilocal, non-local or staggered conserved quantities.',
 ];
 
-function statementOf(cell: number, atMost: number, from = 3): string {
+function statementOf(cell: number, atMost: number, from: number): string {
   const chain = `On the infinite chain of cells of ${cell} spin${cell === 1 ? '' : 's'} 1/2, for every k of ${from} or more`;
   return atMost === 0
     ? `${chain}, there is no translation-invariant conserved quantity of range exactly k cells.`
@@ -59,37 +59,16 @@ export function everyRangeCertificate(h: Hamiltonian): string {
   const { topParts, pencil: reduced } = growth.pencil();
   const { generic, exceptional } = boundsOf(reduced, 0);
   const atMost = Math.max(generic, ...exceptional.map((e) => e.dimension));
-  const prime = primesBelow().next().value!;
-  const free = topParts.map((f) => {
-    const own = [...f.numerators.keys()].find((w) => topParts.every((g) => g === f || !g.numerators.has(w)));
-    return text(chain, own!);
-  });
-  const head = {
-    certificate: 'conserved quantities of a spin chain',
-    version: 1,
-    kind: model.spins === 2 ? 'every-range-modular' : 'every-range',
-    tool: `holdfast ${VERSION}`,
-    model: { cell: model.spins, range: 2, terms: terms(chain, h.density) },
-    claim: { from: 3, atMost, statement: statementOf(model.spins, atMost), assumes: assumes(3) },
-    charges: [],
-  };
+  const claim = { spins: model.spins, from: 3, atMost };
   if (model.spins === 2) {
     const root = rootBelowRanges(reduced, topParts.length - atMost);
     if (root === undefined)
       throw new LimitError(
         'every-range certificate: the pencil of two spins a cell loses rank at values that no range takes; modulo a prime some range does',
       );
-    return canonicalText({
-      ...head,
-      evidence: {
-        prime,
-        free,
-        topParts: topParts.map((f) => terms(chain, f)),
-        root: String(root),
-        witnesses: growth
-          .witnesses(topParts, root)
-          .map(({ parts, x }) => ({ parts: parts.map(String), x: terms(chain, x) })),
-      },
+    return documentOf('every-range-modular', h, claim, {
+      ...topPartEvidence(chain, topParts),
+      ...rootEvidence(root, growth.witnesses(topParts, root), (x) => terms(chain, packed(x))),
     });
   }
   const inner = topParts.map((f) => growth.inner(f));
@@ -103,20 +82,54 @@ export function everyRangeCertificate(h: Hamiltonian): string {
     rows.push(row);
     functionals.push(functional);
   }
-  return canonicalText({
-    ...head,
-    evidence: {
-      prime,
-      free,
-      topParts: topParts.map((f) => terms(chain, f)),
-      functionals: functionals.map((f) => terms(chain, f)),
-      minors: minorsOf(rows, topParts.length - atMost, topParts.length),
-    },
+  return documentOf('every-range', h, claim, {
+    ...topPartEvidence(chain, topParts),
+    functionals: functionals.map((f) => terms(chain, f)),
+    minors: minorsOf(rows, topParts.length - atMost, topParts.length),
   });
 }
 
-/** First range that half steps speak of. */
-const HALF_STEP_FROM = 5;
+/** What all kinds have in common. */
+function documentOf(
+  kind: string,
+  h: Hamiltonian,
+  { spins, from, atMost }: { readonly spins: number; readonly from: number; readonly atMost: number },
+  evidence: Value,
+): string {
+  return canonicalText({
+    certificate: 'conserved quantities of a spin chain',
+    version: 1,
+    kind,
+    tool: `holdfast ${VERSION}`,
+    model: { cell: spins, range: 2, terms: terms(h.chain, h.density) },
+    claim: { from, atMost, statement: statementOf(spins, atMost, from), assumes: assumes(from) },
+    charges: [],
+    evidence,
+  });
+}
+
+/** The prime, and the top parts with a string each that no other has. */
+function topPartEvidence(chain: Chain, topParts: readonly Operator[]) {
+  return {
+    prime: primesBelow().next().value!,
+    free: topParts.map((f) => {
+      const others = topParts.filter((g) => g !== f);
+      return text(chain, [...f.numerators.keys()].find((w) => others.every((g) => !g.numerators.has(w)))!);
+    }),
+    topParts: topParts.map((f) => terms(chain, f)),
+  };
+}
+
+function rootEvidence(root: bigint, witnesses: readonly Witness[], print: (x: Witness['x']) => Value) {
+  return {
+    root: String(root),
+    witnesses: witnesses.map(({ parts, x }) => ({ parts: parts.map(String), x: print(x) })),
+  };
+}
+
+function packed(x: Witness['x']): Operator {
+  return Operator.fromIntegers([...x].map(([string, value]) => [BigInt(string), value] as const));
+}
 
 function halfStepCertificate(h: Hamiltonian, model: BondsAndFields): string {
   const steps = halfSteps(model);
@@ -152,35 +165,15 @@ function halfStepCertificate(h: Hamiltonian, model: BondsAndFields): string {
         return [word, factor] as const;
       }),
     );
-  const operators = topParts.map(operator);
-  const free = operators.map((f) => {
-    const own = [...f.numerators.keys()].find((w) => operators.every((g) => g === f || !g.numerators.has(w)));
-    return text(chain, own!);
-  });
-  const atMost = 2 * most;
-  return canonicalText({
-    certificate: 'conserved quantities of a spin chain',
-    version: 1,
-    kind: 'half-steps',
-    tool: `holdfast ${VERSION}`,
-    model: { cell: 1, range: 2, terms: terms(chain, h.density) },
-    claim: {
-      from: HALF_STEP_FROM,
-      atMost,
-      statement: statementOf(1, atMost, HALF_STEP_FROM),
-      assumes: assumes(HALF_STEP_FROM),
+  return documentOf(
+    'half-steps',
+    h,
+    { spins: 1, from: HALF_STEP_RANGE, atMost: 2 * most },
+    {
+      ...topPartEvidence(chain, topParts.map(operator)),
+      ...rootEvidence(root, growth.witnesses(topParts, root), (x) => terms(chain, operator(x))),
     },
-    charges: [],
-    evidence: {
-      prime: primesBelow().next().value!,
-      free,
-      topParts: operators.map((f) => terms(chain, f)),
-      root: String(root),
-      witnesses: growth
-        .witnesses(topParts, root)
-        .map(({ parts, x }) => ({ parts: parts.map(String), x: terms(chain, operator(x)) })),
-    },
-  });
+  );
 }
 
 /** Where H alone makes the pencil lose rank: k = 1, t = −2. */
@@ -190,9 +183,8 @@ const USUAL_ROOT = -2n;
  * The one negative integer at which the pencil may lose rank, and then by one; elsewhere it has rank `size`. Undefined where constant
  * entries of the diagonal form, and one linear entry with such a root, are not enough to see it.
  */
-function rootBelowRanges({ constant, linear }: Pencil, size: number): bigint | undefined {
-  const matrix = constant.map((row, i) => row.map((a, j) => univariateOf(a, linear[i]![j]!)));
-  const diagonal = diagonalForm(matrix);
+function rootBelowRanges(pencil: Pencil, size: number): bigint | undefined {
+  const diagonal = diagonalOf(pencil);
   const missing = size - diagonal.filter((entry) => entry.length === 1).length;
   if (missing <= 0) return USUAL_ROOT;
   if (missing > 1) return undefined;
@@ -211,7 +203,7 @@ function annihilators(growth: CellGrowth): Operator[] {
   const builder = new MatrixBuilder();
   for (const s of growth.strings(3)) {
     const q = Operator.fromIntegers([[BigInt(s), 1n]]);
-    for (const [word, value] of growth.right(q, 3).minus(growth.left(q)).numerators)
+    for (const [word, value] of growth.grown(q, 3).numerators)
       builder.add(s, column.get(Number(word))!, value);
   }
   return exactNullSpace(builder.finish(strings.length)).map(({ columns, values }) =>

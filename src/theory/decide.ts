@@ -10,7 +10,7 @@ import { citationFor } from './citations.ts';
 import { type BondsAndFields, decompose, MAX_GROUPED_SPINS } from './decompose.ts';
 import { isFreeFermionic } from './free-fermions.ts';
 import { CellGrowth, injectivity } from './growth.ts';
-import { CORE_LENGTH, HalfStepGrowth, halfSteps } from './half-steps.ts';
+import { CORE_LENGTH, HALF_STEP_RANGE, HalfStepGrowth, halfSteps } from './half-steps.ts';
 import { ladderBase } from './ladder.ts';
 import { boundsOf } from './pencil.ts';
 import {
@@ -150,9 +150,6 @@ export function everyRangeBound(model: BondsAndFields): EveryRangeBound | { reas
     pencil,
   };
 }
-
-/** First range whose two half-lengths 2k − 2 and 2k − 1 both are at least 7. */
-const HALF_STEP_RANGE = 5;
 
 /** Half-lengths 2k − 2 and 2k − 1 make range k. */
 function byRange(

@@ -10,13 +10,16 @@ import { exactNullSpace, MatrixBuilder } from '../search/null-space.ts';
 import type { BondsAndFields } from './decompose.ts';
 import type { Sign } from './growth.ts';
 import { type Combination, type Letters, lettersOf } from './letters.ts';
-import { type Pencil, pencilFromRelations, ZERO_PENCIL } from './pencil.ts';
+import { type Pencil, pencilFromRelations, type Witness, witnessesOf, ZERO_PENCIL } from './pencil.ts';
 
 /** A density: strings as numbers in base `letters.count`, first site lowest, first letter not the identity. */
 export type Density = Map<number, bigint>;
 
 /** Half-length at which the inner part becomes linear in ℓ. */
 export const CORE_LENGTH = 6;
+
+/** First range whose two half-lengths 2k − 2 and 2k − 1 both are at least 7. */
+export const HALF_STEP_RANGE = 5;
 
 export class HalfStepGrowth {
   readonly #omega: bigint;
@@ -180,32 +183,16 @@ export class HalfStepGrowth {
     return { alpha, beta };
   }
 
-  /** As `CellGrowth.witnesses`, x of half-length 6. */
-  witnesses(
-    topParts: readonly Density[],
-    t: bigint,
-  ): { readonly parts: readonly bigint[]; readonly x: Density }[] {
-    const builder = new MatrixBuilder();
-    topParts.forEach((f, i) => {
-      const { alpha, beta } = this.parts(f);
-      for (const [string, value] of alpha) builder.add(string, i, value);
-      for (const [string, value] of beta) builder.add(string, i, t * value);
-    });
-    const strings = this.strings(CORE_LENGTH);
-    const v = topParts.length;
-    strings.forEach((string, i) => {
-      this.addColumn(builder, v + i, string);
-    });
-    return exactNullSpace(builder.finish(v + strings.length)).flatMap(({ columns, values }) => {
-      if (columns[0]! >= v) return [];
-      const parts = new Array<bigint>(v).fill(0n);
-      const x = new Map<number, bigint>();
-      columns.forEach((c, i) => {
-        if (c < v) parts[c] = values[i]!;
-        else x.set(strings[c - v]!, -values[i]!);
-      });
-      return [{ parts, x }];
-    });
+  /** Why the pencil loses rank at t, x of half-length 6: see `witnessesOf`. */
+  witnesses(topParts: readonly Density[], t: bigint): Witness[] {
+    return witnessesOf(
+      topParts.map((f) => {
+        const { alpha, beta } = this.parts(f);
+        return [...alpha, ...[...beta].map(([string, value]) => [string, t * value] as const)];
+      }),
+      this.strings(CORE_LENGTH),
+      (builder, column, string) => this.addColumn(builder, column, string),
+    );
   }
 
   /** The pencil `R D_6 + (ℓ − 6)(D_7 − R D_6)` modulo `(R − ωA) G_6`, for ℓ ≥ 7. */

@@ -6,7 +6,7 @@
  * See `docs/theory.md`, theorems 5 and 8.
  */
 import { diagonalForm } from '../linear/diagonal.ts';
-import { integerRoots, univariateOf } from '../linear/univariate.ts';
+import { integerRoots, type Univariate, univariateOf } from '../linear/univariate.ts';
 import type { IntegerVector } from '../search/charges.ts';
 import { exactNullSpace, MatrixBuilder } from '../search/null-space.ts';
 
@@ -48,10 +48,15 @@ export function pencilFromRelations(relations: readonly IntegerVector[], columns
   return { columns, constant: part(0), linear: part(columns) };
 }
 
+/** The diagonal form of a + t b: at every t the rank is the number of entries that do not vanish there. */
+export function diagonalOf({ constant, linear }: Pencil): Univariate[] {
+  return diagonalForm(constant.map((row, i) => row.map((a, j) => univariateOf(a, linear[i]![j]!))));
+}
+
 /** @param from smallest t of interest, exceptional values below it are left out */
-export function boundsOf({ columns, constant, linear }: Pencil, from: number): PencilBounds {
-  const matrix = constant.map((row, i) => row.map((a, j) => univariateOf(a, linear[i]![j]!)));
-  const diagonal = diagonalForm(matrix);
+export function boundsOf(pencil: Pencil, from: number): PencilBounds {
+  const { columns } = pencil;
+  const diagonal = diagonalOf(pencil);
   const drops = new Map<bigint, number>();
   for (const entry of diagonal)
     for (const root of integerRoots(entry, BigInt(from))) drops.set(root, (drops.get(root) ?? 0) + 1);
@@ -68,6 +73,44 @@ export function boundsOf({ columns, constant, linear }: Pencil, from: number): P
 export function dimensionAt({ columns, constant, linear }: Pencil, t: bigint): number {
   const matrix = constant.map((row, i) => row.map((a, j) => univariateOf(a + t * linear[i]![j]!)));
   return columns - diagonalForm(matrix).length;
+}
+
+/** Why a pencil loses rank at t: Σ parts_i (α_i + t β_i) is the growth of x, string by string. */
+export interface Witness {
+  readonly parts: readonly bigint[];
+  readonly x: ReadonlyMap<number, bigint>;
+}
+
+/**
+ * All reasons why a pencil loses rank at one t, their parts independent.
+ *
+ * @param columns α_i + t β_i for every top part, as strings with coefficients
+ * @param strings those that x may have
+ * @param addColumn adds the growth of a string
+ */
+export function witnessesOf(
+  columns: readonly (readonly (readonly [string: number, value: bigint])[])[],
+  strings: readonly number[],
+  addColumn: (builder: MatrixBuilder, column: number, string: number) => void,
+): Witness[] {
+  const builder = new MatrixBuilder();
+  columns.forEach((column, i) => {
+    for (const [string, value] of column) builder.add(string, i, value);
+  });
+  const v = columns.length;
+  strings.forEach((string, i) => {
+    addColumn(builder, v + i, string);
+  });
+  return exactNullSpace(builder.finish(v + strings.length)).flatMap((relation) => {
+    if (relation.columns[0]! >= v) return [];
+    const parts = new Array<bigint>(v).fill(0n);
+    const x = new Map<number, bigint>();
+    relation.columns.forEach((c, i) => {
+      if (c < v) parts[c] = relation.values[i]!;
+      else x.set(strings[c - v]!, -relation.values[i]!);
+    });
+    return [{ parts, x }];
+  });
 }
 
 export const ZERO_PENCIL: Pencil = { columns: 0, constant: [], linear: [] };
