@@ -7,8 +7,8 @@ import { printDensity } from '../../report/text.ts';
 import { searchWithProgress, steps } from '../charge-options.ts';
 import { type Command, Exit } from '../command.ts';
 import { MODEL_HELP, MODEL_OPTIONS, modelFromOptions } from '../model-options.ts';
+import { rangeOption } from '../number-options.ts';
 import { combination } from './residual.ts';
-import { rangeOption } from './search.ts';
 
 export const algebra: Command = {
   name: 'algebra',

@@ -7,8 +7,8 @@ import { decimalText } from '../../report/decimal.ts';
 import { modelAndFormula, searchWithProgress } from '../charge-options.ts';
 import { type Command, Exit } from '../command.ts';
 import { MODEL_HELP, MODEL_OPTIONS } from '../model-options.ts';
+import { rangeOption } from '../number-options.ts';
 import { writeFileWhole } from '../output-file.ts';
-import { rangeOption } from './search.ts';
 
 export const bound: Command = {
   name: 'bound',

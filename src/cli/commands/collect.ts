@@ -16,12 +16,12 @@ import { sectorsIn } from '../../scan/points.ts';
 import { combineSectors } from '../../scan/sectors.ts';
 import { WHOLE_PLAN } from '../../scan/shard.ts';
 import { type Command, type CommandInput, Exit } from '../command.ts';
+import { wholeOption } from '../number-options.ts';
 import { giveWay, writeFileWhole } from '../output-file.ts';
 import { shareLine } from '../progress.ts';
 import { ResultsFolder } from '../scan/folder.ts';
 import type { Job } from '../scan/jobs.ts';
 import { runPool } from '../scan/pool.ts';
-import { wholeOption } from './scan.ts';
 
 export const collect: Command = {
   name: 'collect',

@@ -6,7 +6,7 @@ import { printDensity } from '../../report/text.ts';
 import { searchWithProgress } from '../charge-options.ts';
 import { type Command, Exit } from '../command.ts';
 import { MODEL_HELP, MODEL_OPTIONS, modelFromOptions } from '../model-options.ts';
-import { rangeOption } from './search.ts';
+import { rangeOption } from '../number-options.ts';
 
 export const currents: Command = {
   name: 'currents',

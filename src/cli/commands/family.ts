@@ -15,8 +15,8 @@ import { answersOf } from '../../theory/family/loci.ts';
 import { stateFromText, textFromState } from '../../theory/family/state.ts';
 import { type Command, type CommandInput, Exit } from '../command.ts';
 import { familyFromOptions, MODEL_HELP, MODEL_OPTIONS } from '../model-options.ts';
+import { rangeOption } from '../number-options.ts';
 import { writeFileWhole } from '../output-file.ts';
-import { rangeOption } from './search.ts';
 
 export const family: Command = {
   name: 'family',

@@ -8,8 +8,8 @@ import { unpack, wordOf } from '../../theory/boost.ts';
 import { climbing, type Rung } from '../../theory/ladder.ts';
 import { type Command, Exit } from '../command.ts';
 import { MODEL_HELP, MODEL_OPTIONS, modelFromOptions } from '../model-options.ts';
+import { rangeOption } from '../number-options.ts';
 import { giveWay } from '../output-file.ts';
-import { rangeOption } from './search.ts';
 
 /** Terms up to which a charge is printed. */
 const FOLD = 24;

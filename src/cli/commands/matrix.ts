@@ -4,8 +4,8 @@ import { InputError, show } from '../../errors.ts';
 import { EquationMatrix, type MatrixSize } from '../../search/matrix.ts';
 import { type Command, Exit } from '../command.ts';
 import { MODEL_HELP, MODEL_OPTIONS, modelFromOptions } from '../model-options.ts';
+import { rangeOption } from '../number-options.ts';
 import { giveWay, writeFileWhole } from '../output-file.ts';
-import { rangeOption } from './search.ts';
 
 export const matrix: Command = {
   name: 'matrix',

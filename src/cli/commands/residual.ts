@@ -6,7 +6,7 @@ import { printDensity } from '../../report/text.ts';
 import { modelAndFormula, searchWithProgress, steps } from '../charge-options.ts';
 import { type Command, Exit } from '../command.ts';
 import { MODEL_HELP, MODEL_OPTIONS } from '../model-options.ts';
-import { rangeOption } from './search.ts';
+import { rangeOption } from '../number-options.ts';
 
 export const residual: Command = {
   name: 'residual',

@@ -10,12 +10,12 @@ import { pointsOfShard, type Shard, textFromShard, WHOLE_PLAN } from '../../scan
 import { freeMemory } from '../../search/thread.ts';
 import { type Command, type CommandInput, Exit } from '../command.ts';
 import { readText } from '../model-options.ts';
+import { gigabytesOption, wholeOption } from '../number-options.ts';
 import { writeFileWhole } from '../output-file.ts';
 import { shareLine } from '../progress.ts';
 import { makeFolder, ResultsFolder } from '../scan/folder.ts';
 import { runShard, type ShardReport } from '../scan/run-shard.ts';
 import { assertSbatchOption, shardFromOption, slurmScripts } from '../scan/scheduler.ts';
-import { gigabytesOption } from './search.ts';
 
 export const scan: Command = {
   name: 'scan',
@@ -160,14 +160,6 @@ async function planFromOptions(input: CommandInput): Promise<{ read: ReadPlan; p
   const path = given ?? join(dirname(file), `${basename(file).replace(/\.json$/, '')}.results`);
   if (path === '') throw new InputError('--results', 'a folder', show(path));
   return { read, path };
-}
-
-export function wholeOption({ values }: Pick<CommandInput, 'values'>, name: string): number | undefined {
-  const text = values[name];
-  if (text === undefined) return undefined;
-  if (typeof text !== 'string' || !/^[1-9]\d{0,5}$/.test(text))
-    throw new InputError(`--${name}`, 'a whole number, 1 or more', show(text));
-  return Number(text);
 }
 
 /** Longest estimate of one task where their number is left open, in seconds; most tasks that Slurm takes as it is set up. */

@@ -1,6 +1,6 @@
 /** `holdfast search`: all charges up to a range. */
 import { assertCertifiable, certificateOf } from '../../certificate/certificate.ts';
-import { InputError, LimitError, show } from '../../errors.ts';
+import { InputError, LimitError } from '../../errors.ts';
 import { resultToJson } from '../../report/json.ts';
 import { latexResult } from '../../report/latex.ts';
 import {
@@ -19,6 +19,7 @@ import { checkWithProgress } from '../certificate-file.ts';
 import { type Command, type CommandInput, Exit } from '../command.ts';
 import { asksForLattice, LATTICE_HELP, LATTICE_OPTIONS, latticeFromOptions } from '../lattice-options.ts';
 import { MODEL_HELP, MODEL_OPTIONS, modelFromOptions } from '../model-options.ts';
+import { gigabytesOption, rangeOption, wholeOption } from '../number-options.ts';
 import { writeFileWhole } from '../output-file.ts';
 import { progressLine, shareLine } from '../progress.ts';
 
@@ -84,8 +85,8 @@ Exit status: 0 a complete answer, 1 a failure, 2 bad input.`,
     const method = methodFor(model, range, input.values['growth'] === true ? 'growth' : undefined);
     if (certificate !== undefined) assertCertifiable(model, range, method);
     const checkpoint = input.values['checkpoint'] as string | undefined;
-    const threads = countOption(input, 'threads');
-    const sectors = countOption(input, 'sectors');
+    const threads = wholeOption(input, 'threads', 3);
+    const sectors = wholeOption(input, 'sectors', 3);
     const line = progressLine(input);
     const result = await searchInBackground(model, {
       range,
@@ -195,31 +196,4 @@ function printed(result: SearchResult, { values, colour, width }: CommandInput):
     width,
     ...(values['unfold'] === true ? { fold: Number.POSITIVE_INFINITY } : {}),
   });
-}
-
-export function rangeOption({ values }: Pick<CommandInput, 'values'>): number {
-  const text = values['range'];
-  if (typeof text !== 'string' || !/^[1-9]\d{0,3}$/.test(text))
-    throw new InputError(
-      '--range',
-      'a whole number of cells, 1 or more',
-      text === undefined ? 'no range' : show(text),
-    );
-  return Number(text);
-}
-
-function countOption({ values }: Pick<CommandInput, 'values'>, name: string): number | undefined {
-  const text = values[name];
-  if (text === undefined) return undefined;
-  if (typeof text !== 'string' || !/^[1-9]\d{0,2}$/.test(text))
-    throw new InputError(`--${name}`, 'a whole number, 1 or more', show(text));
-  return Number(text);
-}
-
-export function gigabytesOption({ values }: Pick<CommandInput, 'values'>): number | undefined {
-  const text = values['memory'];
-  if (text === undefined) return undefined;
-  if (typeof text !== 'string' || !/^\d{1,6}(\.\d+)?$/.test(text) || Number(text) === 0)
-    throw new InputError('--memory', 'gigabytes, a positive number', show(text));
-  return Number(text) * 1e9;
 }
