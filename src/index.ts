@@ -182,7 +182,12 @@ export {
   textFromShard,
   WHOLE_PLAN,
 } from './scan/shard.ts';
-export { type BackgroundOptions, searchAllWaves, searchLattice } from './search/background.ts';
+export {
+  type BackgroundOptions,
+  searchAllWaves,
+  searchLattice,
+  type WavesOptions,
+} from './search/background.ts';
 export { candidateCount, type Estimate, estimate } from './search/estimate.ts';
 export {
   type AllWaves,

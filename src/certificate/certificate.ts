@@ -5,7 +5,7 @@ import type { Hamiltonian } from '../model/hamiltonian.ts';
 import type { Method, SearchResult } from '../search/result.ts';
 import { independentRows, tooLarge } from './core.ts';
 import { documentText, type Evidence } from './document.ts';
-import { growthBound, isWithinGrowth } from './growth.ts';
+import { growthBound, isByGrowth } from './growth.ts';
 import { Replay } from './replay.ts';
 
 export interface CertificateOptions {
@@ -48,7 +48,7 @@ const MAX_OPEN = 2 ** 23;
  * @throws LimitError where no certificate can be written, or none that the checker takes
  */
 export function assertCertifiable(h: Hamiltonian, range: number, method: Method = 'exhaustive'): void {
-  if (method === 'growth' && isWithinGrowth(h, range)) return;
+  if (isByGrowth(h, range, method)) return;
   const spins = h.chain.cell * range;
   if (spins > MAX_SPINS)
     throw new LimitError(
@@ -66,7 +66,7 @@ export function certificateBytes({
   range,
   method,
 }: Pick<SearchResult, 'hamiltonian' | 'range'> & Partial<Pick<SearchResult, 'method'>>): number {
-  if (method === 'growth' && isWithinGrowth(hamiltonian, range)) return 200e6;
+  if (isByGrowth(hamiltonian, range, method)) return 200e6;
   return 90e6 + 8 * 4 ** (hamiltonian.chain.cell * range);
 }
 
@@ -108,7 +108,7 @@ export function certificateNow(result: SearchResult): string {
 function* certifying(result: SearchResult): Generator<number, string> {
   const { hamiltonian, range, charges, method } = result;
   assertCertifiable(hamiltonian, range, method);
-  if (method === 'growth' && isWithinGrowth(hamiltonian, range)) {
+  if (isByGrowth(hamiltonian, range, method)) {
     const field = primeField(result.primes[0]!);
     if ((yield* growthBound(hamiltonian, range, field)) === charges.length)
       return documentText(result, { prime: field.p });

@@ -5,13 +5,24 @@
 import { eliminate } from '../linear/elimination.ts';
 import type { Field } from '../linear/field.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
+import type { Method } from '../search/result.ts';
 import { MAX_PENCIL_CELL, rowsOf, stringsOf, TopParts } from '../search/top-parts.ts';
 
 /** Limit of the checker: a string with a cell at either end, in spins. */
 const MAX_SPINS = 26;
 
-export function isWithinGrowth({ chain, range: reach }: Hamiltonian, range: number): boolean {
-  return reach === 2 && chain.cell <= MAX_PENCIL_CELL && chain.cell * (range + 2) <= MAX_SPINS;
+/** Is a search of this kind certified by growth alone, if the bounds meet? */
+export function isByGrowth(
+  { chain, range: reach }: Hamiltonian,
+  range: number,
+  method: Method | undefined,
+): boolean {
+  return (
+    method === 'growth' &&
+    reach === 2 &&
+    chain.cell <= MAX_PENCIL_CELL &&
+    chain.cell * (range + 2) <= MAX_SPINS
+  );
 }
 
 /** At most so many charges of range ≤ k, where the interaction is injective modulo p. Yields the share of the work done. */

@@ -49,9 +49,9 @@ export function* boundByPencil(
   if (root >= 0n) throw new Rejected('the root is not below every range');
   const image = yield* imageOfGrowth(chain, p, length);
   // M1: α and β modulo (R − A) O_3 and p; M2: as rows (α_1 … α_v, β_1 … β_v), a few independent ones.
+  const inner = topParts.map((f) => chain.inner(f));
   const coordinates = new Map<number, Row>();
-  topParts.forEach((f, i) => {
-    const { alpha, beta } = chain.inner(f);
+  inner.forEach(({ alpha, beta }, i) => {
     for (const [offset, part] of [
       [1, alpha],
       [1 + topParts.length, beta],
@@ -85,8 +85,7 @@ export function* boundByPencil(
     const put = (q: Density, factor: bigint) => {
       for (const [s, v] of q) total.set(s, (total.get(s) ?? 0n) + factor * v);
     };
-    topParts.forEach((f, i) => {
-      const { alpha, beta } = chain.inner(f);
+    inner.forEach(({ alpha, beta }, i) => {
       put(alpha, c[i]!);
       put(beta, root * c[i]!);
     });

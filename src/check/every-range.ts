@@ -66,13 +66,18 @@ export function readEveryRange(parts: Parts, from = 3): EveryRangeClaim {
   return { cell, chain: new Growth(cell, terms), atMost, words };
 }
 
+export function readPrime(value: Value): number {
+  const p = natural(value, 'prime', 3, PRIME_BOUND - 1);
+  if (!isPrime(p)) throw new Rejected('the modulus is not a prime');
+  return p;
+}
+
 /** The prime and the top parts of the evidence, with injectivity and completeness: V1 and V2. */
 export function* provenTopParts(
   { cell, chain }: EveryRangeClaim,
   evidence: { readonly prime: Value; readonly free: Value; readonly topParts: Value },
 ): Generator<number, { readonly p: number; readonly topParts: readonly Density[] }> {
-  const p = natural(evidence.prime, 'prime', 3, PRIME_BOUND - 1);
-  if (!isPrime(p)) throw new Rejected('the modulus is not a prime');
+  const p = readPrime(evidence.prime);
   const topParts = list(evidence.topParts, 'topParts', MAX_PARTS).map((v) =>
     density(v, cell, 2, 'a top part'),
   );

@@ -4,19 +4,20 @@
  * are those of docs/certificate.md, "Kind `half-steps`"; docs/theory.md, section 5, proves the theorem behind them.
  */
 import { phase, readTerms, readWord } from './chain.ts';
-import { fields, list, natural, Rejected, string, type Value } from './document.ts';
+import { fields, list, Rejected, string, type Value } from './document.ts';
 import {
   completeTopParts,
   type Density,
   integers,
   MAX_PARTS,
   readEveryRange,
+  readPrime,
   type Steps,
   sum,
 } from './every-range.ts';
 import { boundByPencil } from './every-range-modular.ts';
 import type { Parts } from './exhaustive.ts';
-import { isPrime, PRIME_BOUND, residue } from './modular.ts';
+import { residue } from './modular.ts';
 
 export const HALF_STEPS = 'half-steps';
 
@@ -29,8 +30,7 @@ const CORE = { length: 6, spins: 4 };
 export function* checkHalfSteps(parts: Parts): Generator<number, string> {
   const { cell, chain, atMost, words } = readEveryRange(parts, FROM);
   const evidence = fields(parts.evidence, ['prime', 'free', 'topParts', 'root', 'witnesses'], 'evidence');
-  const p = natural(evidence.prime, 'prime', 3, PRIME_BOUND - 1);
-  if (!isPrime(p)) throw new Rejected('the modulus is not a prime');
+  const p = readPrime(evidence.prime);
   if (cell !== 1) throw new Rejected('half steps are for one spin a cell');
   if (atMost % 2 === 1) throw new Rejected('the bound is twice that of a half-length, and not odd');
   const steps = new HalfSteps(chain.h, chain.w, p);

@@ -28,16 +28,23 @@ export interface PointResult {
 }
 
 /** The Hamiltonian at a point. @throws InputError where it is zero, or a value divides by zero */
-export function hamiltonianAt(
-  { model, parameters, task }: PointsPlan,
-  values: readonly string[],
-): Hamiltonian {
+export function hamiltonianAt(plan: PointsPlan, values: readonly string[]): Hamiltonian {
+  const { model, task } = plan;
   const used = task.kind === 'residual' ? parseSyntax(model.formula).names : null;
-  const free = parameters.map(({ name }, i) => [name, values[i]!] as const);
-  const all = [...Object.entries(model.parameters), ...free].filter(
-    ([name]) => used === null || used.has(name),
+  return modelFromDocument(
+    { formula: model.formula, cell: model.cell },
+    valuesOf(plan, values, (name) => used === null || used.has(name)),
   );
-  return modelFromDocument({ formula: model.formula, cell: model.cell }, new Map(all));
+}
+
+/** The values at a point of all parameters that are used. */
+function valuesOf(
+  { model, parameters }: PointsPlan,
+  values: readonly string[],
+  isUsed: (name: string) => boolean,
+): Map<string, string> {
+  const free = parameters.map(({ name }, i) => [name, values[i]!] as const);
+  return new Map([...Object.entries(model.parameters), ...free].filter(([name]) => isUsed(name)));
 }
 
 /**
@@ -190,16 +197,13 @@ function decideAnswer(
 
 function residualAnswer(
   h: Hamiltonian,
-  { model, parameters }: PointsPlan,
+  plan: PointsPlan,
   { candidate, range }: Extract<ScanTask, { kind: 'residual' }>,
   values: readonly string[],
 ): PointAnswer {
   const { names } = parseSyntax(candidate);
-  const all = [
-    ...Object.entries(model.parameters),
-    ...parameters.map(({ name }, i) => [name, values[i]!] as const),
-  ].filter(([name]) => names.has(name));
-  const density = parseDensity(candidate, { cell: model.cell, parameters: new Map(all) });
+  const parameters = valuesOf(plan, values, (name) => names.has(name));
+  const density = parseDensity(candidate, { cell: plan.model.cell, parameters });
   const { conserved, commutator } = residual(h, density);
   const squaredNorm = textFromRational(innerProduct(h.chain, commutator, commutator));
   if (range === null) return { kind: 'residual', conserved, squaredNorm };

@@ -6,9 +6,9 @@
 import { CancelledError, InputError } from '../errors.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
 import type { LatticeModel } from '../model/lattice-model.ts';
-import type { BackgroundOptions } from './background.ts';
+import type { BackgroundOptions, WavesOptions } from './background.ts';
 import { estimate, requireMemory } from './estimate.ts';
-import { type AllWaves, allWaves, assertChain, type WavesProgress } from './lattice/all-waves.ts';
+import { type AllWaves, allWaves, assertChain } from './lattice/all-waves.ts';
 import type { LatticeResult } from './lattice/result.ts';
 import { estimateLattice, type LatticeOptions, searchLatticeNow } from './lattice/search.ts';
 import { methodFor } from './plan.ts';
@@ -55,9 +55,7 @@ export async function searchLattice(
 export async function searchAllWaves(
   model: LatticeModel,
   range: number,
-  options: Pick<BackgroundOptions, 'signal' | 'memory'> & {
-    readonly onProgress?: (stage: WavesProgress) => void;
-  } = {},
+  options: WavesOptions = {},
 ): Promise<AllWaves> {
   const { signal, memory = MEMORY, onProgress } = options;
   assertChain(model);

@@ -33,6 +33,10 @@ export interface BackgroundOptions extends Omit<SearchOptions, 'store'> {
   readonly threads?: number;
 }
 
+export interface WavesOptions extends Pick<BackgroundOptions, 'signal' | 'memory'> {
+  readonly onProgress?: (stage: WavesProgress) => void;
+}
+
 /** Below so many spins, starting a second thread costs more than it saves. */
 const SPINS_FOR_THREADS = 13;
 
@@ -91,6 +95,7 @@ export async function search(h: Hamiltonian, options: BackgroundOptions): Promis
     for (const i of late.parts) parts[i] = await run(i, late.primesBelow);
   return combined(h, range, parts, method, performance.now() - started);
 }
+
 /**
  * `searchLatticeNow` in a worker thread.
  *
@@ -103,8 +108,7 @@ export async function searchLattice(
   const { signal, memory = freeMemory(), onProgress, ...plain } = options;
   requireMemory('the window', estimateLattice(model, plain), memory);
   if (signal?.aborted) throw new CancelledError('search');
-  const { cell, extents } = model.lattice;
-  const task: LatticeTask = { lattice: { ...model, lattice: { cell, extents } }, options: plain };
+  const task: LatticeTask = { lattice: plainLattice(model), options: plain };
   const result = await inThread<LatticeProgress, LatticeResult>(task, onProgress, signal);
   const { box } = result;
   return Object.freeze({ ...result, model, box: new Box(box.cell, box.low, box.size) });
@@ -118,17 +122,20 @@ export async function searchLattice(
 export async function searchAllWaves(
   model: LatticeModel,
   range: number,
-  options: Pick<BackgroundOptions, 'signal' | 'memory'> & {
-    readonly onProgress?: (stage: WavesProgress) => void;
-  } = {},
+  options: WavesOptions = {},
 ): Promise<AllWaves> {
   const { signal, memory = freeMemory(), onProgress } = options;
   assertChain(model);
   requireMemory('the window', estimateLattice(model, { window: [range] }), memory);
   if (signal?.aborted) throw new CancelledError('search');
-  const { cell, extents } = model.lattice;
-  const task: WavesTask = { lattice: { ...model, lattice: { cell, extents } }, wavesOfRange: range };
+  const task: WavesTask = { lattice: plainLattice(model), wavesOfRange: range };
   return inThread<WavesProgress, AllWaves>(task, onProgress, signal);
+}
+
+/** A model without its class, to cross the thread's boundary. */
+function plainLattice(model: LatticeModel): LatticeTask['lattice'] {
+  const { cell, extents } = model.lattice;
+  return { ...model, lattice: { cell, extents } };
 }
 
 /** Runs a task in a worker: its result as a plain value. */

@@ -4,7 +4,8 @@
  * An output of 2r cells or more is a first window, a middle and a last window. A string that grew at one end, or only changed
  * its end cell, is the output with one window replaced; so for a pair of windows the unknowns are known beforehand, and for all
  * middles at once: each is an offset plus the middle times a unit. The loops run over tiles of middles, rows and the middles of
- * a tile, touch typed arrays only, and go through memory nearly in rising order.
+ * a tile, touch typed arrays only, and go through memory nearly in rising order. Each of the three kinds of rows has them written out:
+ * with the outer two shared, by a call a row, searches of range 12 took up to 6 % longer.
  */
 import type { WeightedForest } from '../linear/forest.ts';
 import type { Hamiltonian } from '../model/hamiltonian.ts';
@@ -38,7 +39,7 @@ export class EndRows {
 
   /** @param longest range of the longest candidate: what grew to an output beyond it has lost as many cells more */
   constructor(
-    readonly h: Hamiltonian,
+    h: Hamiltonian,
     readonly table: WindowTable,
     readonly longest: number,
     readonly coefficients: Float64Array,

@@ -16,7 +16,7 @@ import { assemble, type RestrictedSystem } from './assemble.ts';
 import { type IntegerVector, liftCharges, type Mirror, type ModularBasis, modularBasis } from './charges.ts';
 import { candidateCount } from './estimate.ts';
 import { livingByGrowth } from './growth.ts';
-import { planOf } from './plan.ts';
+import { methodFor, planOf } from './plan.ts';
 import { type Charge, type Method, resultFrom, type SearchResult } from './result.ts';
 import { type Sector, sectorCandidates } from './sectors.ts';
 import { aliveStrings, type OnProgress, type Progress, type SnapshotStore } from './sweep.ts';
@@ -65,9 +65,9 @@ export function searchNow(h: Hamiltonian, options: SearchOptions): SearchResult 
         : { onProgress: (at: Progress) => onProgress({ ...at, done: (i + at.done) / length }) }),
     }),
   );
-  const again = (sector: Sector, primesBelow: number) => searchSector(h, sector, { ...options, primesBelow });
   for (let late = latecomers(parts); late !== undefined; late = latecomers(parts))
-    for (const i of late.parts) parts[i] = again(plan.sectors[i]!, late.primesBelow);
+    for (const i of late.parts)
+      parts[i] = searchSector(h, plan.sectors[i]!, { ...options, primesBelow: late.primesBelow });
   return combined(h, options.range, parts, plan.method, performance.now() - started);
 }
 
@@ -81,11 +81,12 @@ export interface SectorCharges {
 /**
  * One sector of a search by itself.
  *
- * @throws LimitError when the candidates do not fit
+ * @param sector one of `planOf`, which has seen to it that the candidates fit
+ * @throws LimitError when growth is asked for and does not apply
  */
 export function searchSector(h: Hamiltonian, sector: Sector, options: SearchOptions): SectorCharges {
   const { range, onProgress = () => {}, primesBelow: bound = PRIME_BOUND, store } = options;
-  const { method } = planOf(h, options);
+  const method = methodFor(h, range, options.method);
   const candidates = sectorCandidates(sector, range);
   const solving = (done: number) => onProgress({ stage: 'solve', layer: 0, done, candidates });
   const fields = primeFieldsBelow(bound);

@@ -3,24 +3,11 @@ import { checkNow } from '../../src/check/check.ts';
 import { faultOfCertificate } from '../../src/cli/scan/certificate-of-point.ts';
 import { LimitError } from '../../src/errors.ts';
 import { parseModel } from '../../src/model/formula.ts';
-import { readPlan } from '../../src/scan/plan.ts';
 import { pointsIn } from '../../src/scan/points.ts';
 import { readRecords, recordLine } from '../../src/scan/record.ts';
 import { estimatePlan, runPoint } from '../../src/scan/run.ts';
 import { searchNow } from '../../src/search/search.ts';
-
-const plan = (fields: object) =>
-  readPlan({
-    plan: 'points',
-    model: { formula: 'Jx XX + Jy YY + g Z', parameters: { Jy: '0.5' } },
-    parameters: [
-      { name: 'Jx', values: [1, '1/2'] },
-      { name: 'g', values: ['0', '-1/3'] },
-    ],
-    points: 'grid',
-    task: { kind: 'search', range: 4, charges: true, certificates: true },
-    ...fields,
-  }).plan;
+import { plan } from '../support/plans.ts';
 
 describe('a point', () => {
   it('of a search has what the search finds, and its certificate', async () => {

@@ -1,21 +1,8 @@
 import { describe, expect, it } from 'vitest';
 import { faultOfCertificate } from '../../../src/cli/scan/certificate-of-point.ts';
-import { readPlan } from '../../../src/scan/plan.ts';
 import { pointsIn } from '../../../src/scan/points.ts';
 import { runPoint } from '../../../src/scan/run.ts';
-
-const plan = (fields: object) =>
-  readPlan({
-    plan: 'points',
-    model: { formula: 'Jx XX + Jy YY + g Z', parameters: { Jy: '0.5' } },
-    parameters: [
-      { name: 'Jx', values: [1, '1/2'] },
-      { name: 'g', values: ['0', '-1/3'] },
-    ],
-    points: 'grid',
-    task: { kind: 'search', range: 4, charges: true, certificates: true },
-    ...fields,
-  }).plan;
+import { plan } from '../../support/plans.ts';
 
 describe('a certificate belongs to one point and one outcome', () => {
   it('and is refused for every other', async () => {
